@@ -1,0 +1,157 @@
+"""What the user said, after reading: frozen objects without numerics.
+
+A `Section` is what `read_section` returns and what the mesher, the solver and the sketch take. All lengths are in the
+file's own axes (y to the right, z up) and units.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from pathlib import Path
+
+from xsec_fem.model.outline import Face, Point
+from xsec_fem.units import UnitSystem
+
+
+@dataclass(frozen=True)
+class Material:
+    """Elastic constants and design strengths of one material.
+
+    E [MPa], Gxy and Gxz [MPa] in the part's own axes, nu_xy and nu_xz [-]; an isotropic material has equal pairs.
+    `shear_strength` and `strength` [MPa] are design values, None when not given. `G_given` is False when G was taken
+    as E/(2(1+nu)).
+    """
+
+    name: str
+    E: float
+    Gxy: float
+    Gxz: float
+    nu_xy: float
+    nu_xz: float
+    shear_strength: float | None = None
+    strength: float | None = None
+    G_given: bool = True
+
+    @property
+    def isotropic(self) -> bool:
+        """True when the constants do not depend on the grain angle."""
+        return self.Gxy == self.Gxz and self.nu_xy == self.nu_xz
+
+
+@dataclass(frozen=True)
+class MeshRegion:
+    """A region of a mesh or geometry file that stands for a part.
+
+    `region` is a physical name or number (.msh, .geo), a cell-data "region" number or name (.vtu), or None for the
+    whole file; `scale` multiplies the file's coordinates.
+    """
+
+    path: Path
+    region: str | int | None = None
+    scale: float = 1.0
+
+
+@dataclass(frozen=True)
+class Wall:
+    """A straight or bent wall of a named shape, "web" or "top flange": mid-line points and thickness [mm]."""
+
+    name: str
+    points: tuple[Point, ...]
+    thickness: float
+    closed: bool = False
+
+
+@dataclass(frozen=True)
+class Part:
+    """One part: a face in the file's axes, or a region of a mesh file; exactly one of the two is set."""
+
+    name: str
+    material: str
+    shape: str
+    face: Face | None = None
+    mesh_region: MeshRegion | None = None
+    embedded_in: str | None = None
+    grain_angle: float = 0.0
+    walls: tuple[Wall, ...] = ()
+
+
+@dataclass(frozen=True)
+class Joint:
+    """A declared joint between two groups of parts; `strength` [MPa] for glue."""
+
+    name: str
+    first: tuple[str, ...]
+    second: tuple[str, ...]
+    kind: str
+    strength: float | None = None
+
+
+@dataclass(frozen=True)
+class Cut:
+    """A straight cut from one point to another, to be looked at."""
+
+    name: str
+    start: Point
+    end: Point
+
+
+@dataclass(frozen=True)
+class Probe:
+    """A point whose stresses are wanted."""
+
+    name: str
+    at: Point
+
+
+@dataclass(frozen=True)
+class Actions:
+    """Section forces and moments on the +x face; N, Vy, Vz [N], T, My, Mz [N mm].
+
+    `load_point` is where Vy and Vz act: "shear centre", "centroid", a point (y, z), or None when the user did not say
+    (then the shear centre, with a warning). T is counted in addition to the torque of the shear about the shear centre.
+    """
+
+    name: str = "actions"
+    N: float = 0.0
+    Vy: float = 0.0
+    Vz: float = 0.0
+    T: float = 0.0
+    My: float = 0.0
+    Mz: float = 0.0
+    load_point: str | Point | None = None
+
+
+@dataclass(frozen=True)
+class SolveSettings:
+    """The [solve] table. `order` None: 4, or the order of the mesh file when that is above 1."""
+
+    accuracy: float = 0.01
+    order: int | None = None
+    nu_effect: bool = True
+    mesh_file: Path | None = None
+
+
+@dataclass(frozen=True)
+class Section:
+    """A whole section file, resolved. `path` is the file as given, None when built in Python."""
+
+    title: str
+    units: UnitSystem
+    materials: Mapping[str, Material]
+    parts: tuple[Part, ...]
+    joints: tuple[Joint, ...] = ()
+    cuts: tuple[Cut, ...] = ()
+    probes: tuple[Probe, ...] = ()
+    actions: tuple[Actions, ...] = ()
+    solve: SolveSettings = field(default_factory=SolveSettings)
+    path: Path | None = None
+    sha256: str = ""
+    cautions: tuple[tuple[str, str], ...] = ()
+
+    def part(self, name: str) -> Part:
+        """Return the part of that name; KeyError when there is none."""
+        for part in self.parts:
+            if part.name == name:
+                return part
+        raise KeyError(f"no part {name!r}; there are {[part.name for part in self.parts]}")
