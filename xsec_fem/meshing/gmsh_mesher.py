@@ -1,0 +1,92 @@
+"""A drawn section to a mesh: faces, sizes, linear triangles by gmsh, then order p on the exact curves.
+
+Geometry and sizes are apart: `mesh_section` takes any `SizeField`, so that a later loop can ask for a mesh with sizes
+of its own.
+"""
+
+from __future__ import annotations
+
+from typing import Any
+
+import numpy as np
+import numpy.typing as npt
+
+from xsec_fem.errors import MeshingError
+from xsec_fem.fem.mesh import Mesh
+from xsec_fem.meshing.background import apply_sizes
+from xsec_fem.meshing.curve_nodes import curved_edges
+from xsec_fem.meshing.first_sizes import first_sizes
+from xsec_fem.meshing.gmsh_session import gmsh_session
+from xsec_fem.meshing.high_order import CurvedEdges, elevate, folded
+from xsec_fem.meshing.occ_faces import Geometry, build_geometry
+from xsec_fem.meshing.sizing import SizeField
+from xsec_fem.model.section import Section
+
+FloatArray = npt.NDArray[np.float64]
+IntArray = npt.NDArray[np.int64]
+
+_RETRIES = 2
+
+
+def mesh_section(section: Section, order: int = 4, sizes: SizeField | None = None) -> Mesh:
+    """Return the mesh of a section whose parts are all drawn, of the given order (1 to 5).
+
+    `sizes` are wished element sizes in the file's units; the first sizes from the outlines when None. Raises
+    MeshingError (overlap, gmsh failure, folded triangle), InputError (embedded part outside its host).
+    """
+    with gmsh_session() as gmsh:
+        geometry = build_geometry(gmsh, section)
+        field = sizes if sizes is not None else first_sizes(gmsh, section, geometry, order)
+        for attempt in range(_RETRIES + 1):
+            nodes, triangles, part_of = _generate(gmsh, geometry, field, order)
+            bad = np.flatnonzero(folded(nodes, triangles))
+            if not len(bad) or attempt == _RETRIES:
+                break
+            field = _finer(field, nodes[triangles[bad, :3]])
+    return Mesh.build(nodes, triangles, part_of, geometry.part_names, source=f"drawn parts, order {order}, gmsh")
+
+
+def _generate(gmsh: Any, geometry: Geometry, field: SizeField, order: int) -> tuple[FloatArray, IntArray, IntArray]:
+    """Nodes (N, 2) in the file's axes, counter-clockwise triangles (M, n) of order p and their parts (M,)."""
+    gmsh.model.mesh.clear()
+    with apply_sizes(gmsh, field, geometry.frame):
+        gmsh.model.mesh.generate(2)
+    tags, places, _ = gmsh.model.mesh.getNodes()
+    number_of = np.full(int(max(tags)) + 1, -1, np.int64)
+    corners, part_of = face_triangles(gmsh, geometry)
+    points = np.zeros((len(number_of), 2))
+    points[np.asarray(tags, np.int64)] = np.asarray(places).reshape(-1, 3)[:, :2]
+    used = np.unique(corners)
+    number_of[used] = np.arange(len(used))
+    edges = curved_edges(gmsh, number_of, order)
+    edges = CurvedEdges(edges.ends, geometry.frame.from_gmsh(edges.nodes))
+    nodes = geometry.frame.from_gmsh(points[used])
+    raised, triangles = elevate(nodes, _counter_clockwise(nodes, number_of[corners]), order, edges)
+    return raised, triangles, part_of
+
+
+def face_triangles(gmsh: Any, geometry: Geometry) -> tuple[IntArray, IntArray]:
+    """Return gmsh node tags (M, 3) of all triangles and the part (M,) each belongs to."""
+    corners, part_of = [], []
+    for face, part in geometry.faces:
+        tags = gmsh.model.mesh.getElementsByType(2, face)[1]
+        corners.append(np.asarray(tags, np.int64).reshape(-1, 3))
+        part_of.append(np.full(len(corners[-1]), part))
+        if not len(corners[-1]):
+            raise MeshingError(
+                f"gmsh made no triangle in part {geometry.part_names[part]!r}: its outline may cross itself"
+            )
+    return np.vstack(corners), np.concatenate(part_of)
+
+
+def _counter_clockwise(nodes: FloatArray, corners: IntArray) -> IntArray:
+    """Turn clockwise triangles round."""
+    a, b, c = (nodes[corners[:, k]] for k in range(3))
+    clockwise = (b[:, 0] - a[:, 0]) * (c[:, 1] - a[:, 1]) < (b[:, 1] - a[:, 1]) * (c[:, 0] - a[:, 0])
+    return np.where(clockwise[:, None], corners[:, [0, 2, 1]], corners)
+
+
+def _finer(field: SizeField, corners: FloatArray) -> SizeField:
+    """Half the size where triangles with corners (B, 3, 2) folded."""
+    sides = np.linalg.norm(corners - np.roll(corners, 1, axis=1), axis=2).max(axis=1)
+    return field.with_points(corners.reshape(-1, 2), np.repeat(sides / 2, 3))

@@ -1,0 +1,96 @@
+"""gmsh behind one door: started without the user's configuration, silent, always finalised, its errors made ours.
+
+gmsh keeps one global state per process, so a lock lets one thread at a time in. When the caller's own program has
+gmsh running already, a model of our own is added and taken away again, and the options are put back.
+"""
+
+from __future__ import annotations
+
+import re
+import threading
+from collections.abc import Iterator
+from contextlib import contextmanager
+from typing import Any
+
+from xsec_fem.errors import MeshingError, MissingLibraryError
+
+_LOCK = threading.RLock()
+_LOG_LINES = 6
+_MODEL = "xsec_fem"
+_OPTIONS = {
+    "General.Terminal": 0,
+    "General.NumThreads": 1,
+    "General.AbortOnError": 0,
+    "Mesh.Algorithm": 6,  # frontal Delaunay: as fast as 5 and better shaped triangles
+    "Mesh.MeshSizeExtendFromBoundary": 0,
+    "Mesh.MeshSizeFromPoints": 0,
+    "Mesh.MeshSizeFromCurvature": 0,
+    "Mesh.MeshSizeMin": 0,
+    "Mesh.MeshSizeMax": 1e22,
+    "Mesh.LcIntegrationPrecision": 1e-3,  # the default 1e-9 only costs time: sizes are wishes
+    "Mesh.ElementOrder": 1,
+    "Mesh.SaveAll": 0,
+    "Mesh.Binary": 0,
+    "Mesh.MshFileVersion": 4.1,
+}
+
+
+def load_gmsh() -> Any:
+    """Import gmsh and return the module; MissingLibraryError says which library is missing."""
+    try:
+        import gmsh
+    except (ImportError, OSError, TypeError) as error:
+        found = re.search(r"[\w.+-]+\.(?:so|dll|dylib)[\w.]*", str(error))
+        what = f"{found.group()} is missing" if found else str(error)
+        raise MissingLibraryError(
+            f"gmsh cannot be loaded ({what}): run `xsec-fem doctor`, it prints the command that mends it"
+        ) from error
+    return gmsh
+
+
+@contextmanager
+def gmsh_session(name: str = _MODEL) -> Iterator[Any]:
+    """Give the gmsh module with one empty current model; everything is put away at the end.
+
+    Raises MissingLibraryError when gmsh cannot be loaded, MeshingError with the last log lines when gmsh fails.
+    """
+    gmsh = load_gmsh()
+    with _LOCK, _running(gmsh, name):
+        gmsh.logger.start()
+        try:
+            yield gmsh
+        except Exception as error:
+            if type(error) is not Exception:  # gmsh raises the bare class; anything else is not its own
+                raise
+            lines = [str(error), *gmsh.logger.get()[-_LOG_LINES:]]
+            raise MeshingError("gmsh failed: " + " | ".join(dict.fromkeys(filter(None, lines)))) from error
+        finally:
+            gmsh.logger.stop()
+
+
+@contextmanager
+def _running(gmsh: Any, name: str) -> Iterator[None]:
+    """Start gmsh, or borrow the one that runs, and undo it."""
+    if not gmsh.isInitialized():
+        gmsh.initialize(readConfigFiles=False, interruptible=False)
+        try:
+            _set_options(gmsh, _OPTIONS)
+            gmsh.model.add(name)
+            yield
+        finally:
+            gmsh.finalize()
+        return
+    before, model = {key: gmsh.option.getNumber(key) for key in _OPTIONS}, gmsh.model.getCurrent()
+    try:
+        _set_options(gmsh, _OPTIONS)
+        gmsh.model.add(name)
+        yield
+        gmsh.model.remove()
+    finally:
+        _set_options(gmsh, before)
+        gmsh.model.setCurrent(model)
+
+
+def _set_options(gmsh: Any, options: dict[str, float]) -> None:
+    for key, value in options.items():
+        gmsh.option.setNumber(key, value)
