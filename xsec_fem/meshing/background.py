@@ -1,4 +1,4 @@
-"""A size field as gmsh's background field: a view on a triangulation of the points."""
+"""A size field as gmsh's background field: a view of linear triangles, the only source of sizes."""
 
 from __future__ import annotations
 
@@ -8,17 +8,16 @@ from typing import Any
 
 import numpy as np
 
-from xsec_fem.meshing.occ_faces import Frame
-from xsec_fem.meshing.sizing import SizeField
+from xsec_fem.meshing.sizing import SizeTriangles
 
 
 @contextmanager
-def apply_sizes(gmsh: Any, field: SizeField, frame: Frame) -> Iterator[None]:
-    """Make the field the only source of sizes of the current model while the block runs."""
-    points = frame.to_gmsh(field.points)
+def background_sizes(gmsh: Any, field: SizeTriangles) -> Iterator[None]:
+    """Make the field (gmsh's axes) the background field of the current model while the block runs."""
     view = gmsh.view.add("sizes")
-    rows = np.column_stack([points, np.zeros(len(points)), field.sizes * frame.factor])
-    gmsh.view.addListData(view, "SP", len(rows), rows.ravel())
+    places, sizes = field.points[field.corners], field.sizes[field.corners]
+    rows = np.hstack([places[:, :, 0], places[:, :, 1], np.zeros_like(sizes), sizes])
+    gmsh.view.addListData(view, "ST", len(rows), rows.ravel())
     tag = gmsh.model.mesh.field.add("PostView")
     gmsh.model.mesh.field.setNumber(tag, "ViewTag", view)
     gmsh.model.mesh.field.setAsBackgroundMesh(tag)

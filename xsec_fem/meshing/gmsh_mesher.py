@@ -13,13 +13,13 @@ import numpy.typing as npt
 
 from xsec_fem.errors import MeshingError
 from xsec_fem.fem.mesh import Mesh
-from xsec_fem.meshing.background import apply_sizes
+from xsec_fem.meshing.background import background_sizes
 from xsec_fem.meshing.curve_nodes import curved_edges
-from xsec_fem.meshing.first_sizes import first_sizes
+from xsec_fem.meshing.first_sizes import GROWTH, first_sizes
 from xsec_fem.meshing.gmsh_session import gmsh_session
 from xsec_fem.meshing.high_order import CurvedEdges, elevate, folded
 from xsec_fem.meshing.occ_faces import Geometry, build_geometry
-from xsec_fem.meshing.sizing import SizeField
+from xsec_fem.meshing.sizing import SizeField, SizeTriangles, spread_sizes
 from xsec_fem.model.section import Section
 
 FloatArray = npt.NDArray[np.float64]
@@ -49,7 +49,7 @@ def mesh_section(section: Section, order: int = 4, sizes: SizeField | None = Non
 def _generate(gmsh: Any, geometry: Geometry, field: SizeField, order: int) -> tuple[FloatArray, IntArray, IntArray]:
     """Nodes (N, 2) in the file's axes, counter-clockwise triangles (M, n) of order p and their parts (M,)."""
     gmsh.model.mesh.clear()
-    with apply_sizes(gmsh, field, geometry.frame):
+    with background_sizes(gmsh, _spread(gmsh, geometry, field)):
         gmsh.model.mesh.generate(2)
     tags, places, _ = gmsh.model.mesh.getNodes()
     number_of = np.full(int(max(tags)) + 1, -1, np.int64)
@@ -63,6 +63,13 @@ def _generate(gmsh: Any, geometry: Geometry, field: SizeField, order: int) -> tu
     nodes = geometry.frame.from_gmsh(points[used])
     raised, triangles = elevate(nodes, _counter_clockwise(nodes, number_of[corners]), order, edges)
     return raised, triangles, part_of
+
+
+def _spread(gmsh: Any, geometry: Geometry, field: SizeField) -> SizeTriangles:
+    """The field in gmsh's axes over the whole model."""
+    low_y, low_z, _, high_y, high_z, _ = gmsh.model.getBoundingBox(-1, -1)
+    scaled = SizeField(geometry.frame.to_gmsh(field.points), field.sizes * geometry.frame.factor)
+    return spread_sizes(scaled, np.array([low_y, low_z]), np.array([high_y, high_z]), GROWTH)
 
 
 def face_triangles(gmsh: Any, geometry: Geometry) -> tuple[IntArray, IntArray]:
