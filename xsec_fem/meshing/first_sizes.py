@@ -20,6 +20,7 @@ GROWTH = 0.8  # sizes grow by no more than this times the distance
 
 _ACROSS = 10.0  # elements over the diameter of a solid section
 _SAMPLES = 40.0  # boundary samples over the diameter
+_LATTICE = 16.0  # points inside, where nothing is asked for, over the diameter
 _LAYER = 100.0  # walls thinner than the diameter over this are layers, whose triangles may be long
 _LONG = 10.0  # as long as this times their thickness
 _PER_QUARTER = {1: 16, 2: 8, 3: 6, 4: 4, 5: 4}  # elements per quarter circle
@@ -40,7 +41,7 @@ def first_sizes(gmsh: Any, section: Section, geometry: Geometry, order: int) -> 
     thickness = np.concatenate([wall.thickness for wall in walls])
     radius = np.concatenate([wall.radius for wall in walls])
     sizes = np.minimum(_wall_size(thickness, diameter, order), radius * (np.pi / 2) / _PER_QUARTER[order])
-    field = SizeField(points, sizes)
+    field = SizeField(points, sizes).with_points(*_lattice(bounds, diameter))
     curves = read_curves(gmsh, geometry)
     field = field.with_points(*_short_curves(curves, geometry, diameter))
     is_slit = slit_curves(curves, section.joints, geometry.part_names)
@@ -56,6 +57,14 @@ def _outlines(section: Section, part: Part) -> tuple[Any, list[Any]]:
         raise ValueError(f"part {part.name!r} has no outline")
     inner = [p.face.outer for p in section.parts if p.embedded_in == part.name and p.face is not None]
     return part.face.outer, [*part.face.holes, *inner]
+
+
+def _lattice(bounds: FloatArray, diameter: float) -> tuple[FloatArray, FloatArray]:
+    """Points all over the section with the largest size, so that sizes can grow away from the outlines."""
+    step = diameter / _LATTICE
+    axes = [np.arange(bounds[:, k].min() + step / 2, bounds[:, k + 2].max(), step) for k in (0, 1)]
+    points = np.stack(np.meshgrid(*axes), axis=-1).reshape(-1, 2)
+    return points, np.full(len(points), diameter / _ACROSS)
 
 
 def _wall_size(thickness: FloatArray, diameter: float, order: int) -> FloatArray:
