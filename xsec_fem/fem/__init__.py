@@ -1,0 +1,1 @@
+"""Finite elements on triangles: reference elements, quadrature, mesh, assembly, linear solve, edges."""

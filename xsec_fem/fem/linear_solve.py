@@ -20,7 +20,9 @@ FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
 
 LOAD_SUM_LIMIT = 1e-9  # |sum of load| over the sum of |load|: round-off of N terms is below 1e-12 at N = 1e6
-RESIDUAL_LIMIT = 1e-9  # backward-stable factors reach 1e-13; a thousandfold loss still leaves every digit that is printed
+RESIDUAL_LIMIT = (
+    1e-9  # backward-stable factors reach 1e-13; a thousandfold loss still leaves every digit that is printed
+)
 
 
 @dataclass(frozen=True)
@@ -82,7 +84,10 @@ def factorise(matrix: sp.csc_matrix, numbering: IntArray, pinned: int) -> Neuman
     spring = sp.csc_matrix(([diagonal.max()], ([numbering[pinned]], [numbering[pinned]])), shape=(size, size))
     try:
         lu = spla.splu(
-            matrix + spring, permc_spec="NATURAL", diag_pivot_thresh=0.0, options={"SymmetricMode": True, "Equil": False}
+            matrix + spring,
+            permc_spec="NATURAL",
+            diag_pivot_thresh=0.0,
+            options={"SymmetricMode": True, "Equil": False},
         )
     except RuntimeError as error:
         raise SolveError(f"the stiffness matrix of {size} unknowns is singular: {error}") from error

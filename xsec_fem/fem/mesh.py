@@ -135,6 +135,12 @@ class Mesh:
             worst[bent] = np.minimum(worst[bent], det.min(axis=1) / np.abs(det).mean(axis=1))
         return worst
 
+    @cached_property
+    def boxes(self) -> tuple[FloatArray, FloatArray]:
+        """Lowest and highest coordinates of each triangle's nodes, (M, 2) each [mm]."""
+        x = self.nodes[self.triangles]
+        return x.min(axis=1), x.max(axis=1)
+
     def with_nodes(self, nodes: FloatArray) -> Mesh:
         """Return the same mesh with moved nodes, shape (N, 2); used to shift and turn meshes in tests and tools."""
         return replace(self, nodes=nodes)

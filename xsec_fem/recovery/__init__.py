@@ -1,0 +1,1 @@
+"""From warping functions to stresses: fields, corners, largest values, joints, contacts."""

@@ -1,0 +1,1 @@
+"""Saint-Venant theory: mesh and moduli in, frozen constants and fields out."""

@@ -14,7 +14,8 @@ def rotated_tensor(first: float, second: float, degrees: float) -> FloatArray:
     """Return R diag(first, second) Rᵀ, shape (2, 2), R the rotation by the grain angle (counter-clockwise)."""
     c, s = np.cos(np.radians(degrees)), np.sin(np.radians(degrees))
     turn = np.array([[c, -s], [s, c]])
-    return turn @ np.diag([first, second]) @ turn.T
+    tensor: FloatArray = turn @ np.diag([first, second]) @ turn.T
+    return tensor
 
 
 @dataclass(frozen=True)

@@ -46,8 +46,7 @@ class WarpingProblem:
     @property
     def a(self) -> FloatArray:
         """(2, 2) rows a for unit Vy and unit Vz."""
-        inverse: FloatArray = np.linalg.inv(self.area.EI)
-        return inverse
+        return np.asarray(np.linalg.inv(self.area.EI), dtype=np.float64)
 
     def position(self, batch: Batch) -> FloatArray:
         """(m, Q, 2) position of the batch's points from the centroid [mm]."""

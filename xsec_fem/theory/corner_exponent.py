@@ -1,0 +1,78 @@
+"""The exponent of the stress at a corner: u ~ r^lambda, tau ~ r^(lambda - 1), unbounded when lambda < 1.
+
+For antiplane shear in a wedge of sectors with tensors G_k and free sides, u = r^lambda (A cos + B sin) in each sector after the
+affine map G^(-1/2), in which the equation becomes Laplace's. The pair (u, flow/lambda) is carried across a sector of
+mapped angle b by
+
+    [cos lambda b, sin lambda b / g; -g sin lambda b, cos lambda b],   g = sqrt(det G),
+
+and lambda is the smallest positive root of flow = 0 on the far side. One material: lambda = pi/w (M. L. Williams, Stress singularities
+resulting from various boundary conditions in angular corners of plates in extension, J. Appl. Mech. 19, 1952, the
+method; the antiplane equation is derived here).
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+import numpy as np
+import numpy.typing as npt
+
+FloatArray = npt.NDArray[np.float64]
+
+_SCAN = 400  # steps of the search for a sign change in (0, 1]; roots of one wedge lie at least about 1/4 apart
+_BISECTIONS = 50  # halvings of one step: 1/400/2^50 is below round-off
+
+
+@dataclass(frozen=True)
+class Sector:
+    """One material sector of a wedge: from direction `start` to `end`, counter-clockwise [rad], with G (2, 2) [MPa]."""
+
+    start: float
+    end: float
+    G: FloatArray
+
+    @property
+    def angle(self) -> float:
+        """Angle of the sector, in (0, 2 pi) [rad]."""
+        return self.end - self.start
+
+    def mapped(self) -> tuple[float, float]:
+        """Return the angle after the map G^(-1/2) [rad] and g = sqrt(det G) [MPa]."""
+        values, vectors = np.linalg.eigh(self.G)
+        root = vectors @ np.diag(values**-0.5) @ vectors.T
+
+        # the map turns directions by less than 90 deg; steps below 90 deg keep track of the winding
+        steps = max(1, int(np.ceil(self.angle / (np.pi / 4))))
+        angles = self.start + self.angle * np.arange(steps + 1) / steps
+        directions = root @ np.array([np.cos(angles), np.sin(angles)])
+        turned = np.unwrap(np.arctan2(directions[1], directions[0]))
+        return float(turned[-1] - turned[0]), float(np.sqrt(values[0] * values[1]))
+
+
+def wedge_exponent(sectors: Sequence[Sector]) -> float:
+    """Return lambda of a wedge with free sides, its sectors counter-clockwise; 1.0 when no root lies in (0, 1].
+
+    The stress exponent is lambda - 1. Source: Williams 1952 (module docstring); angles in rad, G (2, 2) in MPa.
+    """
+    pairs = [sector.mapped() for sector in sectors]
+
+    def flow(lam: float) -> float:
+        u, w = 1.0, 0.0
+        for angle, g in pairs:
+            c, s = np.cos(lam * angle), np.sin(lam * angle)
+            u, w = c * u + s * w / g, -g * s * u + c * w
+        return w / pairs[0][1]
+
+    grid = np.arange(1, _SCAN + 1) / _SCAN
+    values = np.array([flow(lam) for lam in grid])
+    change = np.flatnonzero(values[:-1] * values[1:] < 0)
+    if not len(change):
+        return 1.0
+    low, high = grid[change[0]], grid[change[0] + 1]
+    sign = np.sign(values[change[0]])
+    for _ in range(_BISECTIONS):
+        middle = (low + high) / 2
+        low, high = (middle, high) if flow(middle) * sign > 0 else (low, middle)
+    return float((low + high) / 2)
