@@ -21,6 +21,7 @@ _OPTIONS = {
     "General.Terminal": 0,
     "General.NumThreads": 1,
     "General.AbortOnError": 0,
+    "Geometry.ToleranceBoolean": 1e-4,  # sections are 64 to 128 across: gaps and overlaps of typed digits are closed
     "Mesh.Algorithm": 6,  # frontal Delaunay: as fast as 5 and better shaped triangles
     "Mesh.MeshSizeExtendFromBoundary": 0,
     "Mesh.MeshSizeFromPoints": 0,
