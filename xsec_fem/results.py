@@ -17,7 +17,7 @@ import numpy.typing as npt
 
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Actions, Section
-from xsec_fem.recovery.corners import Corner
+from xsec_fem.recovery.corners import Corner, corner_mask
 from xsec_fem.recovery.joints import JointResult
 from xsec_fem.recovery.largest import Largest
 from xsec_fem.recovery.section_forces import reduce_actions
@@ -198,6 +198,11 @@ class Result:
     def over_strength(self) -> bool:
         """True when a part or a joint of any case is above its strength."""
         return any(case.utilisation is not None and case.utilisation > 1.0 for case in self.cases)
+
+    @property
+    def away_from_corners(self) -> npt.NDArray[np.bool_]:
+        """(S,) True for nodes at least the stated distance away from every corner where the stress has no limit."""
+        return corner_mask(self.fields.part_nodes.positions, self.corners)
 
     def with_timings(self, **seconds: float) -> Result:
         """Return the same result with more stages timed [s]."""
