@@ -6,6 +6,8 @@ of its own.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+from contextlib import nullcontext
 from typing import Any
 
 import numpy as np
@@ -16,10 +18,12 @@ from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.background import background_sizes
 from xsec_fem.meshing.curve_nodes import curved_edges
 from xsec_fem.meshing.first_sizes import GROWTH, first_sizes
+from xsec_fem.meshing.gmsh_files import merge_geo
 from xsec_fem.meshing.gmsh_session import gmsh_session
 from xsec_fem.meshing.high_order import CurvedEdges, elevate, folded
 from xsec_fem.meshing.occ_faces import Geometry, build_geometry
 from xsec_fem.meshing.sizing import SizeField, SizeTriangles, spread_sizes
+from xsec_fem.model.outline import Point
 from xsec_fem.model.section import Section
 
 FloatArray = npt.NDArray[np.float64]
@@ -28,28 +32,36 @@ IntArray = npt.NDArray[np.int64]
 _RETRIES = 2
 
 
-def mesh_section(section: Section, order: int = 4, sizes: SizeField | None = None) -> Mesh:
-    """Return the mesh of a section whose parts are all drawn, of the given order (1 to 5).
+def mesh_section(
+    section: Section, order: int = 4, sizes: SizeField | None = None, split_points: Sequence[Point] = ()
+) -> Mesh:
+    """Return the mesh, of order 1 to 5, of a section whose parts are all drawn or all surfaces of one .geo file.
 
-    `sizes` are wished element sizes in the file's units; the first sizes from the outlines when None. Raises
-    MeshingError (overlap, gmsh failure, folded triangle), InputError (embedded part outside its host).
+    `sizes` are wished element sizes in the section's units; when None, the first sizes from the outlines, or those that
+    the .geo file sets. `split_points` become nodes of a drawn section. Raises MeshingError (overlap, gmsh failure,
+    folded triangle), InputError (embedded part outside its host, regions that do not fit).
     """
     with gmsh_session() as gmsh:
-        geometry = build_geometry(gmsh, section)
-        field = sizes if sizes is not None else first_sizes(gmsh, section, geometry, order)
+        if section.parts[0].face is None:
+            geometry, field = merge_geo(gmsh, section), sizes
+        else:
+            geometry = build_geometry(gmsh, section, split_points)
+            field = sizes or first_sizes(gmsh, section, geometry, order)
         for attempt in range(_RETRIES + 1):
             nodes, triangles, part_of = _generate(gmsh, geometry, field, order)
             bad = np.flatnonzero(folded(nodes, triangles))
             if not len(bad) or attempt == _RETRIES:
                 break
-            field = _finer(field, nodes[triangles[bad, :3]])
+            field = _finer(nodes, triangles, bad, field)
     return Mesh.build(nodes, triangles, part_of, geometry.part_names, source=f"drawn parts, order {order}, gmsh")
 
 
-def _generate(gmsh: Any, geometry: Geometry, field: SizeField, order: int) -> tuple[FloatArray, IntArray, IntArray]:
+def _generate(
+    gmsh: Any, geometry: Geometry, field: SizeField | None, order: int
+) -> tuple[FloatArray, IntArray, IntArray]:
     """Nodes (N, 2) in the file's axes, counter-clockwise triangles (M, n) of order p and their parts (M,)."""
     gmsh.model.mesh.clear()
-    with background_sizes(gmsh, _spread(gmsh, geometry, field)):
+    with background_sizes(gmsh, _spread(gmsh, geometry, field)) if field else nullcontext():
         gmsh.model.mesh.generate(2)
     tags, places, _ = gmsh.model.mesh.getNodes()
     number_of = np.full(int(max(tags)) + 1, -1, np.int64)
@@ -93,7 +105,10 @@ def _counter_clockwise(nodes: FloatArray, corners: IntArray) -> IntArray:
     return np.where(clockwise[:, None], corners[:, [0, 2, 1]], corners)
 
 
-def _finer(field: SizeField, corners: FloatArray) -> SizeField:
-    """Half the size where triangles with corners (B, 3, 2) folded."""
-    sides = np.linalg.norm(corners - np.roll(corners, 1, axis=1), axis=2).max(axis=1)
-    return field.with_points(corners.reshape(-1, 2), np.repeat(sides / 2, 3))
+def _finer(nodes: FloatArray, triangles: IntArray, bad: IntArray, field: SizeField | None) -> SizeField:
+    """Half the size where triangles folded; where no field was given, the sizes of the triangles there are."""
+    corners = nodes[triangles[:, :3]]
+    size = np.linalg.norm(corners - np.roll(corners, 1, axis=1), axis=2).max(axis=1)
+    if field is None:
+        field = SizeField(corners.mean(axis=1), size)
+    return field.with_points(corners[bad].reshape(-1, 2), np.repeat(size[bad] / 2, 3))
