@@ -40,8 +40,8 @@ class NeumannFactor:
     numbering: IntArray
     lu: spla.SuperLU
 
-    def solve(self, loads: FloatArray, names: tuple[str, ...]) -> tuple[FloatArray, float, float]:
-        """Solve for nodal loads (N, k), one name a column.
+    def solve(self, loads: FloatArray, sizes: FloatArray, names: tuple[str, ...]) -> tuple[FloatArray, float, float]:
+        """Solve for nodal loads (N, k), with the sum (k,) of the magnitudes they were added up from, and a name a column.
 
         Returns the solutions (N, k), the largest relative load sum and the largest relative residual
         |K u - b| / (|K| |u| + |b|) in the maximum norm, both dimensionless.
@@ -51,8 +51,7 @@ class NeumannFactor:
         SolveError
             When a load does not sum to zero, or the residual is not at round-off: the message names the problem.
         """
-        size = np.abs(loads).sum(axis=0)
-        unbalanced = np.abs(loads.sum(axis=0)) / np.where(size > 0, size, 1.0)
+        unbalanced = np.abs(loads.sum(axis=0)) / np.where(sizes > 0, sizes, 1.0)
         worst = int(np.argmax(unbalanced))
         if unbalanced[worst] > LOAD_SUM_LIMIT or not np.all(np.isfinite(loads)):
             raise SolveError(

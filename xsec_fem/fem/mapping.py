@@ -80,11 +80,12 @@ def physical_gradients(
     """Return J^-T (reference gradient): u (m, n, k) at reference points (Q, 2) -> (m, Q, k, 2)."""
     table = element.gradients(points).transpose(0, 2, 1).reshape(-1, u.shape[1])  # (2Q, n)
     reference = (table @ u).reshape(len(u), len(points), 2, u.shape[2])
-    j, d = jacobian[:, :, None], det[:, :, None]
+    inverse = (jacobian / det[..., None, None])[:, :, None]
     ref_y, ref_z = reference[:, :, 0], reference[:, :, 1]
-    return np.stack(
-        [(j[..., 1, 1] * ref_y - j[..., 1, 0] * ref_z) / d, (j[..., 0, 0] * ref_z - j[..., 0, 1] * ref_y) / d], axis=-1
-    )
+    result = np.empty((*ref_y.shape, 2))
+    result[..., 0] = inverse[..., 1, 1] * ref_y - inverse[..., 1, 0] * ref_z
+    result[..., 1] = inverse[..., 0, 0] * ref_z - inverse[..., 0, 1] * ref_y
+    return result
 
 
 def map_points(

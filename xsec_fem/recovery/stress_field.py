@@ -137,10 +137,13 @@ def unit_fields(warping: Warping, stiffness: ShearStiffness) -> UnitFields:
     problem = warping.problem
     part_nodes = PartNodes.of(problem.mesh)
     r = part_nodes.positions - problem.area.centroid
-    strain = part_nodes.mean_gradients(warping.functions)
-    strain += problem.prescribed(part_nodes.part, r[:, None, :])[:, 0]
+    functions = warping.functions
+    twist_and_shear = np.column_stack([functions[:, TORSION], functions[:, SHEAR] + functions[:, POISSON]])
+    strain = part_nodes.mean_gradients(twist_and_shear)
+    strain[:, :1] += problem.twist_field(r[:, None, :])[:, 0]
+    strain[:, 1:] += problem.poisson_field(part_nodes.part, r[:, None, :])[:, 0]
     tau = problem.stress(part_nodes.part, strain[:, None])[:, 0]
-    unit_tau = np.concatenate([tau[:, SHEAR] + tau[:, POISSON], tau[:, TORSION, None] / stiffness.GIT], axis=1)
+    unit_tau = np.concatenate([tau[:, 1:], tau[:, :1] / stiffness.GIT], axis=1)
 
     # sigma_x = E (kappa . r) with EI kappa = (-Mz, My)
     E = problem.moduli.E[part_nodes.part]

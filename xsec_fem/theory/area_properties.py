@@ -69,22 +69,22 @@ class AreaProperties:
 
 
 def area_properties(mesh: Mesh, moduli: Moduli) -> AreaProperties:
-    """Integrate over the mesh; the second moments about the centroid in a second pass, so that nothing cancels.
+    """Integrate over the mesh; moments in N mm² for a file in N and mm.
 
-    Moments are in N mm² for a file in N and mm. Source: module docstring (Timoshenko 1955).
+    Moments are taken about the mean of the nodes and then shifted by the small way to the centroid, so that nothing
+    cancels. Source: module docstring (Timoshenko 1955).
     """
     areas = np.zeros(len(mesh.part_names))
-    EA, first = 0.0, np.zeros(2)
-    shift = mesh.nodes.mean(axis=0)
+    EA, first, second = 0.0, np.zeros(2), np.zeros((2, 2))
+    origin = mesh.nodes.mean(axis=0)
     for batch in batches(mesh):
-        weights = batch.weights * moduli.E[batch.part][:, None]
         areas += np.bincount(batch.part, batch.weights.sum(axis=1), minlength=len(areas))
+        weights = (batch.weights * moduli.E[batch.part][:, None]).ravel()
+        r = (batch.points - origin).reshape(-1, 2)
+        weighted = weights[:, None] * r
         EA += float(weights.sum())
-        first += np.einsum("mq,mqd->d", weights, batch.points - shift)
-    centroid = shift + first / EA
-    EI = np.zeros((2, 2))
-    for batch in batches(mesh):
-        r = batch.points - centroid
-        weighted = r * (batch.weights * moduli.E[batch.part][:, None])[..., None]
-        EI += weighted.reshape(-1, 2).T @ r.reshape(-1, 2)
-    return AreaProperties(areas, EA, centroid, (EI + EI.T) / 2)
+        first += weighted.sum(axis=0)
+        second += weighted.T @ r
+    way = first / EA
+    EI = second - EA * np.outer(way, way)
+    return AreaProperties(areas, EA, origin + way, (EI + EI.T) / 2)

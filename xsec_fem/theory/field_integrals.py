@@ -39,21 +39,19 @@ def field_integrals(warping: Warping) -> FieldIntegrals:
     Source: definitions in Sokolnikoff 1956, ch. 4.
     """
     problem, count = warping.problem, len(PROBLEMS)
-    inverse_G = np.linalg.inv(problem.moduli.G)
     energy, resultant, moment = np.zeros((count, count)), np.zeros((count, 2)), np.zeros(count)
     E_omega_r, E_omega2 = np.zeros(2), 0.0
     for batch in batches(problem.mesh):
-        tau, r, weights = warping.stresses(batch), problem.position(batch), batch.weights
-        strain = tau @ inverse_G[batch.part][:, None]
-        weighted = tau * weights[..., None, None]
-        flat = np.moveaxis(weighted, 2, 0).reshape(count, -1)
-        energy += flat @ np.moveaxis(strain, 2, 0).reshape(count, -1).T
-        resultant += weighted.sum(axis=(0, 1))
-        moment += np.einsum("mqk,mq->k", weighted[..., 1], r[..., 0]) - np.einsum(
-            "mqk,mq->k", weighted[..., 0], r[..., 1]
-        )
+        strain, r, weights = warping.strains(batch), problem.position(batch), batch.weights
+        weighted = problem.stress(batch.part, strain) * weights[..., None, None]
+        for component in (0, 1):
+            force = weighted[..., component].reshape(-1, count)
+            energy += force.T @ strain[..., component].reshape(-1, count)
+            resultant[:, component] += force.sum(axis=0)
+            arm = r[..., 1 - component].ravel()
+            moment += (1 if component else -1) * (arm @ force)
         omega = warping.functions[batch.nodes, TORSION] @ batch.shape_values.T
         E_weights = weights * problem.moduli.E[batch.part][:, None] * omega
-        E_omega_r += np.einsum("mq,mqd->d", E_weights, r)
+        E_omega_r += E_weights.ravel() @ r.reshape(-1, 2)
         E_omega2 += float((E_weights * omega).sum())
     return FieldIntegrals((energy + energy.T) / 2, resultant, moment, E_omega_r, E_omega2)
