@@ -1,0 +1,61 @@
+"""From the [materials.NAME] tables to `Material` objects."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from xsec_fem.model.faults import FaultList
+from xsec_fem.model.schema import IsotropicTable, OrthotropicTable
+from xsec_fem.model.section import Material
+from xsec_fem.model.wording import listed, quoted
+
+_ORTHOTROPIC_KEYS = ("Gxy", "Gxz", "nu_xy", "nu_xz")
+_ISOTROPIC_KEYS = ("G", "nu")
+
+
+def read_materials(table: object, faults: FaultList) -> dict[str, Material]:
+    """Return the materials that can be used, by name, in the file's order; every fault is noted in `faults`."""
+    if not isinstance(table, Mapping) or not table:
+        rule = "needs at least one material" if not table else "materials must be tables"
+        faults.add("", rule, None, "Write [materials.steel] with E and nu below it.")
+        return {}
+    read = {str(name): _read_material(str(name), value, faults) for name, value in table.items()}
+    return {name: material for name, material in read.items() if material is not None}
+
+
+def material_place(name: str) -> str:
+    """Return where a material stands in the file, 'materials.board' or 'materials."glue line"'."""
+    bare = name.isascii() and name.replace("-", "").replace("_", "").isalnum()
+    return f"materials.{name if bare else quoted(name)}"
+
+
+def _read_material(name: str, table: object, faults: FaultList) -> Material | None:
+    place = material_place(name)
+    if not isinstance(table, Mapping):
+        faults.add(place, "must be a table", None, f"Write [{place}] with E and nu below it.")
+        return None
+    if not name.strip() or not name.isprintable():
+        faults.add(place, "needs a name of printable text", None, "Write [materials.steel].")
+        return None
+    if any(key in table for key in _ORTHOTROPIC_KEYS):
+        return _orthotropic(name, table, place, faults)
+    read = faults.read(IsotropicTable, table, place, "an isotropic material", _ORTHOTROPIC_KEYS)
+    if read is None:
+        return None
+    shear = read.G if read.G is not None else read.E / (2 * (1 + read.nu))
+    given = read.G is not None
+    return Material(name, read.E, shear, shear, read.nu, read.nu, read.shear_strength, read.strength, given)
+
+
+def _orthotropic(name: str, table: Mapping[str, object], place: str, faults: FaultList) -> Material | None:
+    mixed = [key for key in _ISOTROPIC_KEYS if key in table]
+    if mixed:
+        remedy = "Give either G and nu, or all of Gxy, Gxz, nu_xy and nu_xz."
+        faults.add(place, f"mixes {listed(mixed)} with the numbers of an orthotropic material", None, remedy)
+    rest = {key: value for key, value in table.items() if key not in mixed}
+    read = faults.read(OrthotropicTable, rest, place, "an orthotropic material")
+    if read is None or mixed:
+        return None
+    return Material(
+        name, read.E, read.Gxy, read.Gxz, read.nu_xy, read.nu_xz, read.shear_strength, read.strength
+    )  # fmt: skip
