@@ -8,7 +8,7 @@ from xsec_fem.errors import Fault, InputError
 from xsec_fem.model.section import Actions, Section
 from xsec_fem.recovery.corners import Corner
 from xsec_fem.recovery.joints import JointFlows, joint_result
-from xsec_fem.recovery.largest import largest_by_part, tau_of, von_mises_of
+from xsec_fem.recovery.largest import Samples, largest_by_part
 from xsec_fem.recovery.section_forces import reduce_actions
 from xsec_fem.recovery.stress_field import StressField, UnitFields
 from xsec_fem.results import CaseResult, PartResult, ProbeResult, Properties
@@ -20,13 +20,14 @@ def solve_case(
     fields: UnitFields,
     properties: Properties,
     corners: Sequence[Corner],
+    rings: Samples,
     flows: Sequence[JointFlows],
 ) -> CaseResult:
     """Return the stresses, largest values, joints and probes of one load case [N, mm, MPa]; InputError for a probe outside."""
     forces = reduce_actions(actions, properties)
     stress = fields.combine(forces)
-    shear = largest_by_part(stress, corners, tau_of)
-    equivalent = largest_by_part(stress, corners, von_mises_of)
+    shear = largest_by_part(stress, corners, rings, "tau")
+    equivalent = largest_by_part(stress, corners, rings, "von_mises")
     parts = tuple(
         PartResult(tau.part, tau, von_mises, _utilisation(section, tau.part, tau.value, von_mises.value))
         for tau, von_mises in zip(shear, equivalent, strict=True)

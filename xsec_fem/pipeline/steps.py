@@ -21,6 +21,7 @@ from xsec_fem.pipeline.load_cases import solve_case
 from xsec_fem.pipeline.stopwatch import Stopwatch
 from xsec_fem.recovery.corners import find_corners
 from xsec_fem.recovery.joints import joint_flows
+from xsec_fem.recovery.largest import corner_rings
 from xsec_fem.recovery.stress_field import unit_fields
 from xsec_fem.results import Result
 from xsec_fem.theory.area_properties import area_properties
@@ -70,7 +71,10 @@ def solve_on_mesh(section: Section, mesh: Mesh, watch: Stopwatch | None = None) 
         corners = find_corners(mesh, edges, moduli.G)  # 8
         contacts = named_contacts(section, mesh, edges)
         flows = [joint_flows(warping, stiffness, fields, edges, joint) for joint in section.joints]
-        cases = tuple(solve_case(section, actions, fields, properties, corners, flows) for actions in section.actions)
+        rings = corner_rings(mesh, corners)
+        cases = tuple(
+            solve_case(section, actions, fields, properties, corners, rings, flows) for actions in section.actions
+        )
     return Result(  # 10
         section, mesh, properties, cases, contacts, corners,
         checks=checks(warping, integrals, fields, edges, corners),

@@ -139,7 +139,8 @@ def _boundary_between(edges: Edges, inside: npt.NDArray[np.bool_]) -> IntArray:
     """Edges with one triangle inside and one outside."""
     inner = np.flatnonzero(edges.triangles[:, 1] >= 0)
     sides = inside[edges.triangles[inner]]
-    return inner[sides[:, 0] != sides[:, 1]]
+    between: IntArray = inner[sides[:, 0] != sides[:, 1]]
+    return between
 
 
 def joint_flows(
@@ -188,7 +189,8 @@ def joint_result(
 ) -> JointResult:
     """Return a joint's flow, mean, peak and utilisation under the given forces [N, N mm -> N/mm, MPa].
 
-    The peak is the largest |tau . n| at the nodes of the line, the mean of both sides, outside the stated distance of singular corners.
+    The peak is the largest |tau . n| at the nodes of the line, the mean of both sides, outside the stated distance of
+    singular corners.
     """
     unit = np.array([forces.Vy, forces.Vz, forces.T])
     flow, by_hand = float(flows.flow @ unit), float(flows.separated @ unit)

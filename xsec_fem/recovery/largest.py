@@ -6,22 +6,26 @@ that what is reported does not change with the mesh.
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
 from dataclasses import dataclass
+from typing import Literal
 
 import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.fem.locate import find_triangles
+from xsec_fem.fem.mesh import Mesh
 from xsec_fem.fem.reference_triangle import lattice
 from xsec_fem.recovery.corners import Corner, corner_mask
-from xsec_fem.recovery.stress_field import PointStress, StressField
+from xsec_fem.recovery.stress_field import StressField
 
 FloatArray = npt.NDArray[np.float64]
-Measure = Callable[[StressField], FloatArray]
+IntArray = npt.NDArray[np.int64]
+BoolArray = npt.NDArray[np.bool_]
+Measure = Literal["tau", "von_mises"]
 
 _FINE = 12  # divisions of a triangle's side when searching between nodes: a degree-4 peak is met to about 1e-4
-_TRIANGLES = 8  # triangles searched
+_TRIANGLES = 8  # triangles searched in each part
 _ARC = 9  # points on the circle round a corner
 
 
@@ -42,91 +46,109 @@ class Largest:
     beside_corner: bool = False
 
 
-def tau_of(stress: PointStress) -> float:
-    """Magnitude of the shear stress [MPa]."""
-    return stress.tau
+@dataclass(frozen=True)
+class Samples:
+    """Points inside triangles at which nodal fields are read.
+
+    Attributes
+    ----------
+    elements : (K,) triangle of each point.
+    values : (K, n) basis functions there.
+    places : (K, 2) the points in the file's axes [mm].
+    """
+
+    elements: IntArray
+    values: FloatArray
+    places: FloatArray
 
 
-def von_mises_of(stress: PointStress) -> float:
-    """Equivalent stress [MPa] (R. von Mises, 1913)."""
-    return stress.von_mises
+@dataclass(frozen=True)
+class Readings:
+    """Stresses read at points: places (K, 2), part (K,), tau (K, 2), sigma_x (K,) [MPa], beside a corner (K,)."""
+
+    places: FloatArray
+    part: IntArray
+    tau: FloatArray
+    sigma_x: FloatArray
+    beside: BoolArray
+
+    def measure(self, what: Measure) -> FloatArray:
+        """Return |tau| or the equivalent stress, shape (K,) [MPa] (R. von Mises, 1913)."""
+        shear = (self.tau**2).sum(axis=1)
+        return np.asarray(np.sqrt(shear if what == "tau" else self.sigma_x**2 + 3 * shear))
+
+    def chosen(self, which: BoolArray) -> Readings:
+        """Return the readings where the mask (K,) is True."""
+        return Readings(self.places[which], self.part[which], self.tau[which], self.sigma_x[which], self.beside[which])
+
+    def at(self, index: int, value: float, part_names: Sequence[str]) -> Largest:
+        """Return one reading as a Largest of that value [MPa]."""
+        (y, z), (tau_xy, tau_xz) = self.places[index].tolist(), self.tau[index].tolist()
+        name = part_names[int(self.part[index])]
+        return Largest(value, y, z, name, tau_xy, tau_xz, float(self.sigma_x[index]), bool(self.beside[index]))
+
+
+def corner_rings(mesh: Mesh, corners: Sequence[Corner]) -> Samples:
+    """Return the points inside the material on the circles of the stated distance round all singular corners."""
+    elements, values, places = [], [], []
+    for corner in corners:
+        first, last = corner.directions
+        for angle in first + (last - first) * np.linspace(0.0, 1.0, _ARC):
+            place = (corner.y + corner.distance * np.cos(angle), corner.z + corner.distance * np.sin(angle))
+            found, reference = find_triangles(mesh, place)  # none where a curved side leaves its tangent
+            elements.append(found)
+            values.append(mesh.element.values(reference))
+            places.append(np.tile(place, (len(found), 1)))
+    if not elements:
+        return Samples(np.zeros(0, np.int64), np.zeros((0, mesh.triangles.shape[1])), np.zeros((0, 2)))
+    return Samples(np.concatenate(elements), np.vstack(values), np.vstack(places))
 
 
 def largest_by_part(
-    field: StressField, corners: Sequence[Corner], measure: Callable[[PointStress], float]
+    field: StressField, corners: Sequence[Corner], rings: Samples, what: Measure
 ) -> tuple[Largest, ...]:
-    """Return the largest value of a measure (tau_of or von_mises_of) in each part, in the mesh's order of parts [MPa]."""
-    values = field.tau if measure is tau_of else field.von_mises
-    clear = corner_mask(field.part_nodes.positions, corners)
-    beside = [candidate for corner in corners for candidate in _on_circle(field, corner, measure)]
+    """Return the largest |tau| or equivalent stress in each part, in the mesh's order of parts [MPa].
+
+    `rings` are the points of `corner_rings`. A part that lies within the corners' distances altogether is read at its nodes.
+    """
+    numbering = field.part_nodes
+    everywhere = np.zeros(len(numbering.node), bool)
+    nodes = Readings(numbering.positions, numbering.part, field.tau_components, field.sigma_x, everywhere)
+    ring = _read(field, rings, beside=True)
     result = []
-    for index, name in enumerate(field.part_nodes.mesh.part_names):
-        mine = field.part_nodes.part == index
-        chosen = np.flatnonzero(mine & clear) if (mine & clear).any() else np.flatnonzero(mine)
-        top = int(chosen[np.argmax(values[chosen])])
-        candidates = [_at_node(field, top, measure), *_between_nodes(field, chosen, values, measure, corners)]
-        candidates += [candidate for candidate in beside if candidate.part == name]
-        result.append(max(candidates, key=lambda candidate: candidate.value))
+    for index in range(len(numbering.mesh.part_names)):
+        mine = nodes.chosen(nodes.part == index)
+        clear = corner_mask(mine.places, corners)
+        between = _between_nodes(field, index, corners, what)
+        candidates = [mine.chosen(clear if clear.any() else ~clear), between, ring.chosen(ring.part == index)]
+        best = [
+            readings.at(int(np.argmax(values)), float(values.max()), numbering.mesh.part_names)
+            for readings, values in ((readings, readings.measure(what)) for readings in candidates)
+            if len(values)
+        ]
+        result.append(max(best, key=lambda largest: largest.value))
     return tuple(result)
 
 
-def _make(stress: PointStress, y: float, z: float, value: float, beside: bool = False) -> Largest:
-    return Largest(
-        value, float(y), float(z), stress.part, stress.tau_xy, stress.tau_xz, stress.sigma_x, beside_corner=beside
+def _read(field: StressField, samples: Samples, beside: bool) -> Readings:
+    """Interpolate the nodal stresses of each sample's own part."""
+    nodes = field.part_nodes.triangles[samples.elements]
+    return Readings(
+        samples.places,
+        field.part_nodes.mesh.part_of[samples.elements],
+        np.einsum("kn,knd->kd", samples.values, field.tau_components[nodes]),
+        np.einsum("kn,kn->k", samples.values, field.sigma_x[nodes]),
+        np.full(len(samples.elements), beside),
     )
 
 
-def _at_node(field: StressField, node: int, measure: Callable[[PointStress], float]) -> Largest:
-    numbering = field.part_nodes
-    stress = PointStress(
-        numbering.mesh.part_names[numbering.part[node]],
-        float(field.tau_xy[node]),
-        float(field.tau_xz[node]),
-        float(field.sigma_x[node]),
-    )
-    y, z = numbering.positions[node]
-    return _make(stress, y, z, measure(stress))
-
-
-def _between_nodes(
-    field: StressField,
-    chosen: npt.NDArray[np.int64],
-    values: FloatArray,
-    measure: Callable[[PointStress], float],
-    corners: Sequence[Corner],
-) -> list[Largest]:
-    """The best point of a fine lattice in the few triangles of the part whose nodes carry the largest values."""
+def _between_nodes(field: StressField, part: int, corners: Sequence[Corner], what: Measure) -> Readings:
+    """Readings on a fine lattice in the few triangles of a part whose nodes carry the largest values."""
     numbering, mesh = field.part_nodes, field.part_nodes.mesh
-    allowed = np.zeros(len(values))
-    allowed[chosen] = values[chosen]
-    of_triangle = allowed[numbering.triangles].max(axis=1)
-    tops = np.argsort(of_triangle)[::-1][:_TRIANGLES]
-    tops = tops[(numbering.part[numbering.triangles[tops, 0]] == numbering.part[chosen[0]]) & (of_triangle[tops] > 0)]
+    size = np.where(corner_mask(numbering.positions, corners), field.tau if what == "tau" else field.von_mises, 0.0)
+    mine = np.flatnonzero(mesh.part_of == part)
+    tops = mine[np.argsort(size[numbering.triangles[mine]].max(axis=1))[::-1][:_TRIANGLES]]
     table = mesh.element.values(lattice(_FINE) / _FINE)
-    nodes = numbering.triangles[tops]
-    tau, sigma = table @ field.tau_components[nodes], table @ field.sigma_x[nodes][..., None]
-    places = table @ mesh.nodes[mesh.triangles[tops]]
-    shear = (tau**2).sum(axis=-1)
-    size = np.sqrt(shear) if measure is tau_of else np.sqrt(sigma[..., 0] ** 2 + 3 * shear)
-    size[~corner_mask(places, corners)] = -1.0
-    if not size.size or size.max() < 0:
-        return []
-    m, q = np.unravel_index(int(np.argmax(size)), size.shape)
-    part = mesh.part_names[mesh.part_of[tops[m]]]
-    stress = PointStress(part, float(tau[m, q, 0]), float(tau[m, q, 1]), float(sigma[m, q, 0]))
-    return [_make(stress, places[m, q, 0], places[m, q, 1], float(size[m, q]))]
-
-
-def _on_circle(field: StressField, corner: Corner, measure: Callable[[PointStress], float]) -> list[Largest]:
-    """The largest value of each part on the circle round a singular corner, inside the material."""
-    first, last = corner.directions
-    best: dict[str, Largest] = {}
-    for angle in first + (last - first) * np.linspace(0.0, 1.0, _ARC):
-        y, z = corner.y + corner.distance * np.cos(angle), corner.z + corner.distance * np.sin(angle)
-        if not len(find_triangles(field.part_nodes.mesh, (y, z))[0]):
-            continue  # a curved side leaves its tangent
-        for stress in field.at(y, z):
-            candidate = _make(stress, y, z, measure(stress), beside=True)
-            if stress.part not in best or candidate.value > best[stress.part].value:
-                best[stress.part] = candidate
-    return list(best.values())
+    places = (table @ mesh.nodes[mesh.triangles[tops]]).reshape(-1, 2)
+    samples = Samples(np.repeat(tops, len(table)), np.tile(table, (len(tops), 1)), places)
+    return _read(field, samples, beside=False).chosen(corner_mask(places, corners))

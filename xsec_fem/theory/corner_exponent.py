@@ -6,9 +6,9 @@ mapped angle b by
 
     [cos lambda b, sin lambda b / g; -g sin lambda b, cos lambda b],   g = sqrt(det G),
 
-and lambda is the smallest positive root of flow = 0 on the far side. One material: lambda = pi/w (M. L. Williams, Stress singularities
-resulting from various boundary conditions in angular corners of plates in extension, J. Appl. Mech. 19, 1952, the
-method; the antiplane equation is derived here).
+and lambda is the smallest positive root of flow = 0 on the far side. One material: lambda = pi/w (the method of
+M. L. Williams, Stress singularities resulting from various boundary conditions in angular corners of plates in extension,
+J. Appl. Mech. 19, 1952; the antiplane equation is derived here).
 """
 
 from __future__ import annotations

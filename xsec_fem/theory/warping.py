@@ -72,7 +72,7 @@ class WarpingProblem:
         return np.stack([-r[..., 1], r[..., 0]], axis=-1)[:, :, None]
 
     def poisson_field(self, part: npt.NDArray[np.int64], r: FloatArray) -> FloatArray:
-        """Return -d of unit Vy and Vz for triangles of the parts (m,) at r (m, Q, 2) [mm], shape (m, Q, 2, 2). Source: Love 1927."""
+        """Return -d of unit Vy and Vz for triangles of the parts (m,) at r (m, Q, 2) [mm]: (m, Q, 2, 2). Source: Love 1927."""
         return -poisson_term(self.moduli.nu[part], r, self.a)
 
     def prescribed(self, part: npt.NDArray[np.int64], r: FloatArray) -> FloatArray:
