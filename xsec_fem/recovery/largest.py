@@ -6,6 +6,7 @@ that what is reported does not change with the mesh.
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Literal
@@ -33,7 +34,7 @@ _ARC = 9  # points on the circle round a corner
 class Largest:
     """A largest value [MPa] at (y, z) [mm] in `part`, with the stresses there.
 
-    `beside_corner` is True when it was read on the circle round a singular corner.
+    `beside_corner` is True when it was read within twice the stated distance of a singular corner: the corner governs it.
     """
 
     value: float
@@ -64,13 +65,12 @@ class Samples:
 
 @dataclass(frozen=True)
 class Readings:
-    """Stresses read at points: places (K, 2), part (K,), tau (K, 2), sigma_x (K,) [MPa], beside a corner (K,)."""
+    """Stresses read at points: places (K, 2), part (K,), tau (K, 2), sigma_x (K,) [MPa]."""
 
     places: FloatArray
     part: IntArray
     tau: FloatArray
     sigma_x: FloatArray
-    beside: BoolArray
 
     def measure(self, what: Measure) -> FloatArray:
         """Return |tau| or the equivalent stress, shape (K,) [MPa] (R. von Mises, 1913)."""
@@ -79,13 +79,14 @@ class Readings:
 
     def chosen(self, which: BoolArray) -> Readings:
         """Return the readings where the mask (K,) is True."""
-        return Readings(self.places[which], self.part[which], self.tau[which], self.sigma_x[which], self.beside[which])
+        return Readings(self.places[which], self.part[which], self.tau[which], self.sigma_x[which])
 
-    def at(self, index: int, value: float, part_names: Sequence[str]) -> Largest:
+    def at(self, index: int, value: float, part_names: Sequence[str], corners: Sequence[Corner]) -> Largest:
         """Return one reading as a Largest of that value [MPa]."""
         (y, z), (tau_xy, tau_xz) = self.places[index].tolist(), self.tau[index].tolist()
+        beside = any(math.hypot(y - corner.y, z - corner.z) < 2 * corner.distance for corner in corners)
         name = part_names[int(self.part[index])]
-        return Largest(value, y, z, name, tau_xy, tau_xz, float(self.sigma_x[index]), bool(self.beside[index]))
+        return Largest(value, y, z, name, tau_xy, tau_xz, float(self.sigma_x[index]), beside)
 
 
 def corner_rings(mesh: Mesh, corners: Sequence[Corner]) -> Samples:
@@ -112,9 +113,8 @@ def largest_by_part(
     `rings` are the points of `corner_rings`. A part that lies within the corners' distances altogether is read at its nodes.
     """
     numbering = field.part_nodes
-    everywhere = np.zeros(len(numbering.node), bool)
-    nodes = Readings(numbering.positions, numbering.part, field.tau_components, field.sigma_x, everywhere)
-    ring = _read(field, rings, beside=True)
+    nodes = Readings(numbering.positions, numbering.part, field.tau_components, field.sigma_x)
+    ring = _read(field, rings)
     result = []
     for index in range(len(numbering.mesh.part_names)):
         mine = nodes.chosen(nodes.part == index)
@@ -122,7 +122,7 @@ def largest_by_part(
         between = _between_nodes(field, index, corners, what)
         candidates = [mine.chosen(clear if clear.any() else ~clear), between, ring.chosen(ring.part == index)]
         best = [
-            readings.at(int(np.argmax(values)), float(values.max()), numbering.mesh.part_names)
+            readings.at(int(np.argmax(values)), float(values.max()), numbering.mesh.part_names, corners)
             for readings, values in ((readings, readings.measure(what)) for readings in candidates)
             if len(values)
         ]
@@ -130,7 +130,7 @@ def largest_by_part(
     return tuple(result)
 
 
-def _read(field: StressField, samples: Samples, beside: bool) -> Readings:
+def _read(field: StressField, samples: Samples) -> Readings:
     """Interpolate the nodal stresses of each sample's own part."""
     nodes = field.part_nodes.triangles[samples.elements]
     return Readings(
@@ -138,7 +138,6 @@ def _read(field: StressField, samples: Samples, beside: bool) -> Readings:
         field.part_nodes.mesh.part_of[samples.elements],
         np.einsum("kn,knd->kd", samples.values, field.tau_components[nodes]),
         np.einsum("kn,kn->k", samples.values, field.sigma_x[nodes]),
-        np.full(len(samples.elements), beside),
     )
 
 
@@ -151,4 +150,4 @@ def _between_nodes(field: StressField, part: int, corners: Sequence[Corner], wha
     table = mesh.element.values(lattice(_FINE) / _FINE)
     places = (table @ mesh.nodes[mesh.triangles[tops]]).reshape(-1, 2)
     samples = Samples(np.repeat(tops, len(table)), np.tile(table, (len(tops), 1)), places)
-    return _read(field, samples, beside=False).chosen(corner_mask(places, corners))
+    return _read(field, samples).chosen(corner_mask(places, corners))
