@@ -37,6 +37,7 @@ def merge_geo(gmsh: Any, section: Section) -> Geometry:
     Raises InputError (regions do not fit), MeshingError (gmsh cannot read it, or it is not flat).
     """
     shared = common_file(section)
+    _require_last_line(shared.path)
     gmsh.merge(str(shared.path))
     for key, value in _AFTER_MERGE.items():
         gmsh.option.setNumber(key, value)
@@ -113,6 +114,17 @@ def _surface_counts(gmsh: Any, element: int) -> tuple[int, dict[int, tuple[int, 
         starts[int(tag)] = (total, total + count)
         total += count
     return total, starts
+
+
+def _require_last_line(path: Path) -> None:
+    """gmsh leaves out the last line of a script, without a word, when no line break ends it."""
+    try:
+        text = path.read_bytes()
+    except OSError as error:
+        raise file_error(path, f"cannot be read: {error.strerror}", "Check the path") from error
+    if not text.endswith((b"\n", b"\r")):
+        value = text.splitlines()[-1].decode("utf-8", "replace").strip()[-40:] if text else "an empty file"
+        raise file_error(path, "must end with a line break", "Add one, else its last line would not be read", value)
 
 
 def _require_flat(gmsh: Any, path: Path) -> None:

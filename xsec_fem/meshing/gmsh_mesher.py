@@ -66,6 +66,7 @@ def _generate(
     tags, places, _ = gmsh.model.mesh.getNodes()
     number_of = np.full(int(max(tags)) + 1, -1, np.int64)
     corners, part_of = face_triangles(gmsh, geometry)
+    _require_whole(gmsh, corners)
     points = np.zeros((len(number_of), 2))
     points[np.asarray(tags, np.int64)] = np.asarray(places).reshape(-1, 3)[:, :2]
     used = np.unique(corners)
@@ -96,6 +97,20 @@ def face_triangles(gmsh: Any, geometry: Geometry) -> tuple[IntArray, IntArray]:
                 f"gmsh made no triangle in part {geometry.part_names[part]!r}: its outline may cross itself"
             )
     return np.vstack(corners), np.concatenate(part_of)
+
+
+def _require_whole(gmsh: Any, corners: IntArray) -> None:
+    """Every side of a triangle that has no neighbour must lie on a curve: gmsh has been seen to leave holes silently."""
+    sides = np.sort(corners[:, [[0, 1], [1, 2], [2, 0]]].reshape(-1, 2), axis=1)
+    lines = np.sort(np.asarray(gmsh.model.mesh.getElementsByType(1)[1], np.int64).reshape(-1, 2), axis=1)
+    size = int(corners.max()) + 1
+    codes, used = np.unique(sides @ [size, 1], return_counts=True)
+    loose = np.setdiff1d(codes[used == 1], lines @ [size, 1])
+    if len(loose) or used.max() > 2:
+        raise MeshingError(
+            f"gmsh left {len(loose)} sides of triangles without a neighbour inside a part, and {(used > 2).sum()} with "
+            "more than one: an outline may cross itself or another one"
+        )
 
 
 def _counter_clockwise(nodes: FloatArray, corners: IntArray) -> IntArray:

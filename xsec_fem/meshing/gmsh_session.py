@@ -20,7 +20,7 @@ _MODEL = "xsec_fem"
 _OPTIONS = {
     "General.Terminal": 0,
     "General.NumThreads": 1,
-    "General.AbortOnError": 0,
+    "General.AbortOnError": 2,  # raise
     "Geometry.ToleranceBoolean": 1e-4,  # sections are 64 to 128 across: gaps and overlaps of typed digits are closed
     "Mesh.Algorithm": 6,  # frontal Delaunay: as fast as 5 and better shaped triangles
     "Mesh.MeshSizeExtendFromBoundary": 0,
@@ -82,12 +82,13 @@ def _running(gmsh: Any, name: str) -> Iterator[None]:
             gmsh.finalize()
         return
     before, model = {key: gmsh.option.getNumber(key) for key in _OPTIONS}, gmsh.model.getCurrent()
+    _set_options(gmsh, _OPTIONS)
+    gmsh.model.add(name)
     try:
-        _set_options(gmsh, _OPTIONS)
-        gmsh.model.add(name)
         yield
-        gmsh.model.remove()
     finally:
+        gmsh.model.setCurrent(name)
+        gmsh.model.remove()
         _set_options(gmsh, before)
         gmsh.model.setCurrent(model)
 

@@ -82,8 +82,9 @@ def section_frame(section: Section) -> Frame:
 
 
 def gmsh_face(gmsh: Any, face: Face, frame: Frame) -> int:
-    """Draw one face in the kernel and return its tag."""
-    wires = [gmsh.model.occ.addCurveLoop(_curves(gmsh, loop, frame)) for loop in face.loops]
+    """Draw one face in the kernel and return its tag; all its loops go in counter-clockwise, as gmsh wants them."""
+    loops = [loop if loop.ccw else loop.reversed() for loop in face.loops]
+    wires = [gmsh.model.occ.addCurveLoop(_curves(gmsh, loop, frame)) for loop in loops]
     return int(gmsh.model.occ.addPlaneSurface(wires))
 
 
