@@ -1,0 +1,65 @@
+"""How wide a text is on paper, and where to break it so that it fits."""
+
+from __future__ import annotations
+
+import re
+import warnings
+from functools import lru_cache
+from typing import Any
+
+
+def line_height(size: float) -> float:
+    """Return the distance between lines of letters of that size [pt], in inches."""
+    return 1.35 * size / 72
+
+
+@lru_cache(maxsize=8)
+def _font(bold: bool) -> Any:
+    from matplotlib.font_manager import FontProperties, findfont, get_font
+
+    return get_font(findfont(FontProperties(weight="bold" if bold else "normal")))
+
+
+def text_width(text: str, size: float, bold: bool = False) -> float:
+    """Return the width of one line of text in inches; `size` in points."""
+    font = _font(bold)
+    font.set_size(size, 72)
+    with warnings.catch_warnings():
+        warnings.simplefilter("ignore")  # a letter that the font lacks is drawn as a box of the same width
+        font.set_text(text, 0.0)
+    return float(font.get_width_height()[0]) / 64 / 72
+
+
+def wrapped(text: str, size: float, width: float, bold: bool = False) -> list[str]:
+    """Break a text into lines no wider than `width` inches; words longer than a line are broken too."""
+    lines: list[str] = []
+    line = ""
+    for word in _kept_together(text).split(" "):
+        longer = f"{line} {word}" if line else word
+        if text_width(longer, size, bold) <= width:
+            line = longer
+            continue
+        if line:
+            lines.append(line)
+        while text_width(word, size, bold) > width and len(word) > 1:
+            cut = max(1, int(len(word) * width / text_width(word, size, bold)) - 1)
+            lines.append(word[:cut])
+            word = word[cut:]
+        line = word
+    return [*lines, line] if line else lines
+
+
+def _kept_together(text: str) -> str:
+    """Put spaces that do not break around "=" and between a number and its unit."""
+    text = " ".join(text.split()).replace(" = ", "\u00a0=\u00a0")
+    text = re.sub(r"(?<=[\d)]) (?=(N|kN|lbf|kip|MPa|kPa|psi|ksi|mm|m|in)\b)", "\u00a0", text)
+    return re.sub(r"\u00a0(N|kN|lbf|kip) (mm|m|in)\b", "\u00a0\\1\u00a0\\2", text)
+
+
+def shortened(text: str, size: float, width: float) -> str:
+    """Return the text, or its beginning and "…" when it is wider than `width` inches."""
+    if text_width(text, size) <= width:
+        return text
+    while text and text_width(text + "…", size) > width:
+        text = text[:-1]
+    return text.rstrip() + "…"
