@@ -7,6 +7,7 @@ import math
 from xsec_fem.model.outline import Arc, Isometry, Loop, Point
 
 _ON_CHORD = 1e-6  # a centre this close to the chord, as a share of the radius, leaves the side of the arc open
+ROUND_OFF_DEG = 1e-7  # angles this close are equal: 2e-9 rad
 _QUARTER = math.pi / 2
 
 
@@ -29,11 +30,11 @@ def at_angle(radius: float, degrees: float) -> Point:
 def swept_arcs(radius: float, from_deg: float, to_deg: float) -> tuple[Arc, ...]:
     """Return counter-clockwise arcs about the origin of at most 90 deg each, from one angle up to a larger one.
 
-    The difference is at most 360 deg; at exactly 360 deg the last end is the first start, bit by bit.
+    The difference is at most 360 deg; at 360 deg the last end is the first start, bit by bit.
     """
     n = max(1, math.ceil((to_deg - from_deg) / 90 - 1e-9))
     points = [at_angle(radius, from_deg + (to_deg - from_deg) * k / n) for k in range(n + 1)]
-    if to_deg - from_deg == 360:
+    if abs(to_deg - from_deg - 360) < ROUND_OFF_DEG:
         points[-1] = points[0]
     return tuple(Arc(points[k], points[k + 1], (0.0, 0.0), True) for k in range(n))
 

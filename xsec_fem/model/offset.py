@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 from xsec_fem.model.outline import Face, Point
 from xsec_fem.model.rounding import Corner, Misfit, misfits, rounded_loop, rounded_polyline, tangent_factor
 
-_SHARP = 1e-6  # room left on a side between two sharp corners, as a share of what they need
+_SHARP = 1e-6  # room left between two sharp corners as a share of their need; a bend below this share is a fold
 _WALL_STEP = 5.0  # [deg] between the points of a bend's mid-line
 
 
@@ -36,15 +36,21 @@ class MidLine:
         half = self.thickness / 2
         if self.bend_radius is None:
             return self._mitre_misfits(half)
-        radius = self.bend_radius + half * (1 if self.bend_radius else 1 + _SHARP)
+        radius = self._inner + half * (1 if self._inner else 1 + _SHARP)
         corners = [Corner(p, radius, "bend_radius", self._piece(k)) for k, p in enumerate(self.points)]
         found = []
         for m in misfits(corners, self.closed):
-            if m.limit > half:
+            if self._inner and m.limit > half * (1 + _SHARP):
                 found.append(replace(m, radius=self.bend_radius, limit=m.limit - half))
             else:
-                found.append(replace(m, key="thickness", radius=self.thickness, limit=2 * m.limit))
+                found.append(replace(m, key="thickness", radius=self.thickness, limit=2 * m.limit / (1 + _SHARP)))
         return found
+
+    @property
+    def _inner(self) -> float:
+        """Inner bend radius, 0 when there is none or next to none."""
+        radius = self.bend_radius or 0.0
+        return radius if radius > _SHARP * self.thickness else 0.0
 
     def _mitre_misfits(self, half: float) -> list[Misfit]:
         """Pieces so short that the mitres at their ends meet on one side; bends to opposite sides need less room."""
@@ -90,7 +96,7 @@ class MidLine:
     def _radius(self, inside: bool) -> float:
         if self.bend_radius is None:
             return 0.0
-        return self.bend_radius if inside else self.bend_radius + self.thickness
+        return self._inner if inside else self._inner + self.thickness
 
     def face(self) -> Face:
         """Return the strip: one loop when open, outer loop and hole when closed. Bends must fit (see `misfits`)."""

@@ -115,24 +115,34 @@ def rounded_polyline(corners: Sequence[Corner]) -> list[Segment]:
 
 def _segments(corners: Sequence[Corner], closed: bool) -> list[Segment]:
     """Sides between tangent points, each followed by the arc of the corner at its end."""
-    n, factors = len(corners), _factors(corners, closed)
-    arrive, leave = [c.point for c in corners], [c.point for c in corners]
-    for i in range(n):
-        if corners[i].radius and factors[i]:
-            reach = corners[i].radius * factors[i]
-            arrive[i] = _along(corners[i].point, corners[i - 1].point, reach)
-            leave[i] = _along(corners[i].point, corners[(i + 1) % n].point, reach)
+    n = len(corners)
+    arrive, leave = _tangent_points(corners, closed)
     segments: list[Segment] = []
     for i in range(n if closed else n - 1):
         j = (i + 1) % n
-        side = math.dist(corners[i].point, corners[j].point)
-        if math.dist(leave[i], corners[i].point) + math.dist(arrive[j], corners[j].point) >= side * (1 - FITS):
-            arrive[j] = leave[i]
-        else:
+        if leave[i] != arrive[j]:
             segments.append(Line(leave[i], arrive[j]))
         if arrive[j] != leave[j]:
             segments.extend(_corner_arcs(corners[i].point, corners[j], corners[(j + 1) % n].point, arrive[j], leave[j]))
     return segments
+
+
+def _tangent_points(corners: Sequence[Corner], closed: bool) -> tuple[list[Point], list[Point]]:
+    """Where each corner's arc begins and ends, its own point twice when sharp (or as good as); equal on a used-up side."""
+    n, factors = len(corners), _factors(corners, closed)
+    sides = [math.dist(corners[k].point, corners[(k + 1) % n].point) for k in range(n)]
+    reach = [corner.radius * factor if corner.radius else 0.0 for corner, factor in zip(corners, factors, strict=True)]
+    reach = [r if r > FITS * min(sides[k - 1], sides[k]) else 0.0 for k, r in enumerate(reach)]
+    arrive, leave = [c.point for c in corners], [c.point for c in corners]
+    for i in range(n):
+        if reach[i]:
+            arrive[i] = _along(corners[i].point, corners[i - 1].point, reach[i])
+            leave[i] = _along(corners[i].point, corners[(i + 1) % n].point, reach[i])
+    for i in range(n if closed else n - 1):
+        j = (i + 1) % n
+        if reach[i] + reach[j] >= sides[i] * (1 - FITS):
+            leave[i] = arrive[j] = corners[j].point if not reach[j] else leave[i] if reach[i] else corners[i].point
+    return arrive, leave
 
 
 def _corner_arcs(before: Point, corner: Corner, after: Point, start: Point, end: Point) -> tuple[Arc, ...]:

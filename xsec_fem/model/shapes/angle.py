@@ -6,17 +6,17 @@ from pydantic import Field
 
 from xsec_fem.model.rounding import Corner
 from xsec_fem.model.section import Wall
-from xsec_fem.model.shapes.base import CorneredShape, NotNegative, Positive, Problem, not_below
+from xsec_fem.model.shapes.base import CorneredShape, NotNegative, Positive, Problem, fills, not_below
 
 
 class Angle(CorneredShape):
     """An angle, heel at the bottom left and at its own origin; anchor = "bottom left" places it by the heel."""
 
-    depth: Positive = Field(description="of the vertical leg, over all")
-    width: Positive = Field(description="of the horizontal leg, over all")
-    thickness: Positive = Field(description="of both legs")
-    root_radius: NotNegative = Field(0.0, description="between the legs")
-    toe_radius: NotNegative = Field(0.0, description="on the inner edge of the leg tips")
+    depth: Positive = Field(description="Give the length of the vertical leg, over all.")
+    width: Positive = Field(description="Give the length of the horizontal leg, over all.")
+    thickness: Positive = Field(description="Give the legs' thickness.")
+    root_radius: NotNegative = Field(0.0, description="Give the radius between the legs.")
+    toe_radius: NotNegative = Field(0.0, description="Give the radius on the inner edge of the leg tips.")
 
     def size_problems(self) -> list[Problem]:
         """The thickness less than either leg."""
@@ -25,7 +25,7 @@ class Angle(CorneredShape):
         return [
             not_below("thickness", self.thickness, limit, what, remedy)
             for what, limit in limits
-            if self.thickness >= limit
+            if fills(self.thickness, limit)
         ][:1]
 
     def corners(self) -> list[Corner]:

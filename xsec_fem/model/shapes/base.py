@@ -15,9 +15,13 @@ from xsec_fem.model.outline import Face, Loop, Point
 from xsec_fem.model.rounding import Corner, misfits, rounded_loop
 from xsec_fem.model.section import Wall
 
-Number = Annotated[float, Strict(), Field(allow_inf_nan=False)]
-Positive = Annotated[Number, Field(gt=0)]
-NotNegative = Annotated[Number, Field(ge=0)]
+_LARGEST = 1e12  # squares and fourth powers of lengths must stay finite
+_ROUND_OFF = 1e-9  # sizes closer than this share of one another are equal: a wall that thin is a rounding error
+
+_Real = Annotated[float, Strict(), Field(allow_inf_nan=False, lt=_LARGEST)]
+Number = Annotated[_Real, Field(gt=-_LARGEST)]
+Positive = Annotated[_Real, Field(gt=0)]
+NotNegative = Annotated[_Real, Field(ge=0)]
 Pair = tuple[Number, Number]
 
 
@@ -38,7 +42,10 @@ class Problem:
 
 
 class ShapeSpec(BaseModel):
-    """The numbers of one shape, as given in the section file; lengths in the file's unit [mm], angles in degrees."""
+    """The numbers of one shape, as given in the section file; lengths in the file's unit [mm], angles in degrees.
+
+    The description of each field is the remedy shown when its number is missing, not a number, or out of range.
+    """
 
     model_config = ConfigDict(frozen=True, extra="forbid")
     default_anchor: ClassVar[str] = "centre"
@@ -86,10 +93,10 @@ def text(value: float) -> str:
 
 def at_most(limit: float) -> str:
     """Return a largest value as text, rounded down to 6 significant digits so that typing it back passes."""
-    if limit <= 0:
+    if limit == 0:
         return "0"
-    step = 10.0 ** (math.floor(math.log10(limit)) - 5)
-    return text(math.floor(limit / step * (1 + 1e-10)) * step)
+    step = 10.0 ** (math.floor(math.log10(abs(limit))) - 5)
+    return text(math.floor(limit / step + abs(limit / step) * 1e-10) * step)
 
 
 def place(point: Point) -> str:
@@ -100,6 +107,17 @@ def place(point: Point) -> str:
 def too_large(key: str, value: float, where: str, limit: float) -> Problem:
     """Return the problem of a number that may not exceed the limit; `where` reads 'must ...'."""
     return Problem(key, f"{where}: at most {at_most(limit)}", text(value), f"Give {at_most(limit)} or less.")
+
+
+def fills(value: float, limit: float) -> bool:
+    """Return True when the value reaches the limit, or would but for round-off."""
+    return value >= limit * (1 - _ROUND_OFF)
+
+
+def near(points: Sequence[Point]) -> float:
+    """Return the distance below which two of the points count as one [mm]."""
+    y, z = [p[0] for p in points], [p[1] for p in points]
+    return _ROUND_OFF * max(max(y) - min(y), max(z) - min(z))
 
 
 def not_below(key: str, value: float, limit: float, what: str, remedy: str) -> Problem:
@@ -124,13 +142,13 @@ def crossing_problems(loops: Sequence[Loop], key: str) -> list[Problem]:
 
 
 def repeated_points(points: Sequence[Point], key: str, closed: bool) -> list[Problem]:
-    """Return one problem per point that equals the one before it (and the first, when closed)."""
-    found = []
+    """Return one problem per point that equals the one before it (and the first, when closed), but for round-off."""
+    found, same = [], near(points)
     for k in range(len(points)):
-        if k and points[k] == points[k - 1]:
+        if k and math.dist(points[k], points[k - 1]) <= same:
             rule = f"must differ from {key}[{k - 1}]"
             found.append(Problem(f"{key}[{k}]", rule, place(points[k]), "Leave one of the two out."))
-    if closed and len(points) > 1 and points[0] == points[-1]:
+    if closed and len(points) > 1 and math.dist(points[0], points[-1]) <= same:
         rule = "must not repeat the first point"
         found.append(
             Problem(f"{key}[{len(points) - 1}]", rule, place(points[-1]), "Leave it out: the outline closes by itself.")

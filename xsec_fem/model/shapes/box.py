@@ -15,6 +15,7 @@ from xsec_fem.model.shapes.base import (
     Positive,
     Problem,
     ShapeSpec,
+    fills,
     not_below,
     radius_problems,
     text,
@@ -26,13 +27,15 @@ _SIDES = ("bottom", "right side", "top", "left side")
 class Box(ShapeSpec):
     """A box about the origin with `cells` equal cells side by side; all webs are `web` thick."""
 
-    depth: Positive = Field(description="whole height")
-    width: Positive = Field(description="whole width")
-    web: Positive = Field(description="thickness of the upright walls")
-    flange: Positive = Field(description="thickness of top and bottom wall")
-    outer_radius: NotNegative = Field(0.0, description="of the four outer corners")
-    inner_radius: NotNegative = Field(0.0, description="of the four corners of each cell")
-    cells: Annotated[int, Strict(), Field(ge=1)] = Field(1, description="number of equal cells side by side")
+    depth: Positive = Field(description="Give the whole height.")
+    width: Positive = Field(description="Give the whole width.")
+    web: Positive = Field(description="Give the thickness of the upright walls.")
+    flange: Positive = Field(description="Give the thickness of top and bottom wall.")
+    outer_radius: NotNegative = Field(0.0, description="Give the radius of the four outer corners.")
+    inner_radius: NotNegative = Field(0.0, description="Give the radius of the cells' corners.")
+    cells: Annotated[int, Strict(), Field(ge=1, lt=1000)] = Field(
+        1, description="Give the number of equal cells side by side."
+    )
 
     @property
     def cell_width(self) -> float:
@@ -42,11 +45,11 @@ class Box(ShapeSpec):
     def problems(self) -> list[Problem]:
         """Walls that leave room for the cells; radii that fit and leave a wall at the corners."""
         found = []
-        if self.cell_width <= 0:
+        if fills(self.web * (self.cells + 1), self.width):
             what = f"width / {self.cells + 1}, which is what {self.cells + 1} webs would fill"
             limit = self.width / (self.cells + 1)
             found.append(not_below("web", self.web, limit, what, "Give the thickness of one web."))
-        if 2 * self.flange >= self.depth:
+        if fills(2 * self.flange, self.depth):
             remedy = "Give the thickness of the top and bottom wall."
             found.append(not_below("flange", self.flange, self.depth / 2, "half the depth", remedy))
         return found or self._radius_problems() or self._thin_corner_problems()
@@ -58,7 +61,7 @@ class Box(ShapeSpec):
         """The outer arc must not cut into the inner one: the inner arc's farthest point from the outer centre."""
         inner, outer = self.inner_radius, self.outer_radius
         y, z = outer - self.web - inner, outer - self.flange - inner
-        if min(y, z) <= 0 or math.hypot(y, z) + inner < outer:
+        if min(y, z) <= 0 or not fills(math.hypot(y, z) + inner, outer):
             return []
         rule = f"must leave some wall at the corners (web {text(self.web)}, flange {text(self.flange)})"
         remedy = "Usual is inner_radius + thickness."

@@ -7,7 +7,7 @@ from pydantic import Field
 from xsec_fem.model.outline import Point
 from xsec_fem.model.rounding import Corner, half_turned, mirrored
 from xsec_fem.model.section import Wall
-from xsec_fem.model.shapes.base import CorneredShape, NotNegative, Positive, Problem, not_below, text
+from xsec_fem.model.shapes.base import CorneredShape, NotNegative, Positive, Problem, fills, not_below, text
 from xsec_fem.model.shapes.flange import Flange, flange_problems
 
 
@@ -19,14 +19,14 @@ class Channel(CorneredShape):
     inward, as thick as the flange; `root_radius` then also rounds the corner between flange and lip.
     """
 
-    depth: Positive = Field(description="whole height")
-    width: Positive = Field(description="whole width")
-    web: Positive = Field(description="thickness of the web")
-    flange: Positive = Field(description="thickness of the flanges, at mid-outstand when tapered")
-    root_radius: NotNegative = Field(0.0, description="between web and flanges")
-    toe_radius: NotNegative = Field(0.0, description="on the inner edge of the flange tips")
-    taper: NotNegative = Field(0.0, description="slope of the inner flange faces, 0.08 for 8 %")
-    lip: Positive | None = Field(None, description="whole length of the lips at the flange tips, turned inward")
+    depth: Positive = Field(description="Give the whole height.")
+    width: Positive = Field(description="Give the whole width.")
+    web: Positive = Field(description="Give the web's thickness.")
+    flange: Positive = Field(description="Give the flanges' thickness, at mid-outstand when tapered.")
+    root_radius: NotNegative = Field(0.0, description="Give the radius between web and flanges.")
+    toe_radius: NotNegative = Field(0.0, description="Give the radius on the inner edge of the flange tips.")
+    taper: NotNegative = Field(0.0, description="Give the slope of the inner flange faces, 0.08 for 8 %.")
+    lip: Positive | None = Field(None, description="Give the lips' whole length from the flange's outer face.")
 
     def _flange(self) -> Flange:
         return Flange(self.flange, self.width - self.web, self.taper)
@@ -82,12 +82,12 @@ class Zed(CorneredShape):
     of the lips, from the flange's outer face, turned inward; `root_radius` also rounds the corner of flange and lip.
     """
 
-    depth: Positive = Field(description="whole height")
-    width: Positive = Field(description="whole width, tip to tip")
-    web: Positive = Field(description="thickness of the web")
-    flange: Positive = Field(description="thickness of the flanges")
-    root_radius: NotNegative = Field(0.0, description="between web and flanges")
-    lip: Positive | None = Field(None, description="whole length of the lips at the flange tips, turned inward")
+    depth: Positive = Field(description="Give the whole height.")
+    width: Positive = Field(description="Give the whole width, tip to tip.")
+    web: Positive = Field(description="Give the web's thickness.")
+    flange: Positive = Field(description="Give the flanges' thickness.")
+    root_radius: NotNegative = Field(0.0, description="Give the radius between web and flanges.")
+    lip: Positive | None = Field(None, description="Give the lips' whole length from the flange's outer face.")
 
     def size_problems(self) -> list[Problem]:
         """The web thinner than the width, the flanges within the depth, lips that fit."""
@@ -125,17 +125,17 @@ class Zed(CorneredShape):
 
 def _lip_problems(lip: float, flange: float, limit: float, what: str) -> list[Problem]:
     """A lip longer than the flange's thickness and shorter than its room, which `what` puts in words."""
-    if lip <= flange:
+    if fills(flange, lip):
         remedy = "Give its whole length from the flange's outer face, or leave lip out."
         return [Problem("lip", f"must be more than the flange's thickness ({text(flange)})", text(lip), remedy)]
-    if lip >= limit:
+    if fills(lip, limit):
         return [not_below("lip", lip, limit, what, "Give a shorter lip.")]
     return []
 
 
 def _web_problems(web: float, width: float, lips: float) -> list[Problem]:
     """A web that leaves room for the outstands and for the thickness of the lips."""
-    if web < width - lips:
+    if not fills(web + lips, width):
         return []
     what = "the width less the thickness of the lips" if lips else "the width"
     return [not_below("web", web, width - lips, what, "Give the thickness of the web.")]

@@ -6,10 +6,10 @@ from typing import ClassVar
 
 from pydantic import Field
 
-from xsec_fem.model.arcs import at_angle, circle_loop, swept_arcs
+from xsec_fem.model.arcs import ROUND_OFF_DEG, at_angle, circle_loop, swept_arcs
 from xsec_fem.model.outline import EllipseArc, Face, Line, Loop
 from xsec_fem.model.section import Wall
-from xsec_fem.model.shapes.base import Number, Positive, Problem, ShapeSpec, not_below, text
+from xsec_fem.model.shapes.base import Number, Positive, Problem, ShapeSpec, at_most, fills, not_below, text
 
 _WALL_STEP = 5.0  # [deg] between the points of a curved wall's mid-line
 
@@ -17,7 +17,7 @@ _WALL_STEP = 5.0  # [deg] between the points of a curved wall's mid-line
 class Circle(ShapeSpec):
     """A solid circle about the origin."""
 
-    diameter: Positive = Field(description="outer diameter")
+    diameter: Positive = Field(description="Give the outer diameter.")
 
     def face(self) -> Face:
         """Four quarter arcs."""
@@ -27,8 +27,8 @@ class Circle(ShapeSpec):
 class Ellipse(ShapeSpec):
     """A solid ellipse about the origin, its axes along y and z."""
 
-    width: Positive = Field(description="whole size along y")
-    height: Positive = Field(description="whole size along z")
+    width: Positive = Field(description="Give the whole size along y.")
+    height: Positive = Field(description="Give the whole size along z.")
 
     def face(self) -> Face:
         """Four quarter arcs, of a circle when width and height are equal."""
@@ -44,12 +44,12 @@ class Ellipse(ShapeSpec):
 class Ring(ShapeSpec):
     """A round tube about the origin; `diameter` is the outer one."""
 
-    diameter: Positive = Field(description="outer diameter")
-    thickness: Positive = Field(description="of the wall")
+    diameter: Positive = Field(description="Give the outer diameter.")
+    thickness: Positive = Field(description="Give the wall's thickness.")
 
     def problems(self) -> list[Problem]:
         """The wall must leave a hole."""
-        if self.thickness < self.diameter / 2:
+        if not fills(self.thickness, self.diameter / 2):
             return []
         remedy = 'Give the thickness of the wall, or shape = "circle" for a solid bar.'
         return [not_below("thickness", self.thickness, self.diameter / 2, "half the diameter", remedy)]
@@ -70,24 +70,30 @@ class Sector(ShapeSpec):
 
     default_anchor: ClassVar[str] = "origin"
 
-    radius: Positive = Field(description="outer radius")
-    from_deg: Number = Field(description="where it begins, counter-clockwise from +y")
-    to_deg: Number = Field(description="where it ends, at most 360 further on")
-    thickness: Positive | None = Field(None, description="of a ring sector, measured inward")
+    radius: Positive = Field(description="Give the outer radius.")
+    from_deg: Number = Field(description="Give the angle where it begins, counter-clockwise from +y.")
+    to_deg: Number = Field(description="Give the angle where it ends, counter-clockwise from +y.")
+    thickness: Positive | None = Field(None, description="Give the wall's thickness, measured inward.")
+
+    @property
+    def _opening(self) -> float:
+        """Angle between the two ends [deg]; half and whole turns exactly, and 0, when off by round-off only."""
+        opening = self.to_deg - self.from_deg
+        return next((turn for turn in (0.0, 180.0, 360.0) if abs(opening - turn) < ROUND_OFF_DEG), opening)
 
     def problems(self) -> list[Problem]:
         """Angles in order and within one turn; the wall thinner than the radius; a full ring is a ring."""
-        found, opening = [], self.to_deg - self.from_deg
+        found, opening = [], self._opening
         if opening <= 0:
             remedy = "Angles run counter-clockwise from +y: swap the two, or add 360 to to_deg."
             found.append(
                 Problem("to_deg", f"must be more than from_deg ({text(self.from_deg)})", text(self.to_deg), remedy)
             )
         if opening > 360:
-            limit = text(self.from_deg + 360)
+            limit = at_most(self.from_deg + 360)
             remedy = f"Give {limit} or less."
             found.append(Problem("to_deg", f"must be at most from_deg + 360 ({limit})", text(self.to_deg), remedy))
-        if self.thickness is not None and self.thickness >= self.radius:
+        if self.thickness is not None and fills(self.thickness, self.radius):
             remedy = "Leave thickness out for a sector that reaches the centre."
             found.append(not_below("thickness", self.thickness, self.radius, "the radius", remedy))
         if self.thickness is not None and opening == 360:
@@ -99,7 +105,7 @@ class Sector(ShapeSpec):
         """Outer arcs, then the centre or the inner arcs walked back; a whole turn is a circle."""
         outer = swept_arcs(self.radius, self.from_deg, self.to_deg)
         first, last = outer[0].start, outer[-1].end
-        opening = self.to_deg - self.from_deg
+        opening = self._opening
         if self.thickness is not None:
             inner = Loop(swept_arcs(self.radius - self.thickness, self.from_deg, self.to_deg)).reversed().segments
             return Face(Loop((*outer, Line(last, inner[0].start), *inner, Line(inner[-1].end, first))))
@@ -113,7 +119,7 @@ class Sector(ShapeSpec):
         """One open wall for a ring sector."""
         if self.thickness is None:
             return ()
-        radius, opening = self.radius - self.thickness / 2, self.to_deg - self.from_deg
+        radius, opening = self.radius - self.thickness / 2, self._opening
         n = max(2, round(opening / _WALL_STEP))
         points = tuple(at_angle(radius, self.from_deg + opening * k / n) for k in range(n + 1))
         return (Wall("wall", points, self.thickness),)

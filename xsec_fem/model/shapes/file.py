@@ -18,12 +18,12 @@ class FileShape(ShapeSpec):
 
     default_anchor: ClassVar[str] = "origin"
 
-    path: Annotated[str, Field(min_length=1)] = Field(description="of the file, relative to the section file")
+    path: Annotated[str, Field(min_length=1)] = Field(description="Give the path, relative to the section file.")
     region: Annotated[str, Strict()] | Annotated[int, Strict()] | None = Field(
-        None, description="name or number of the physical region; the whole file when absent"
+        None, description="Give the name or number of a physical region."
     )
-    layer: str | None = Field(None, description="of a drawing; all layers when absent")
-    scale: Positive = Field(1.0, description="multiplies the file's coordinates")
+    layer: str | None = Field(None, description="Give the name of one layer of the drawing.")
+    scale: Positive = Field(1.0, description="Give the factor for the file's coordinates.")
 
     def problems(self) -> list[Problem]:
         """A known kind of file; layer only for drawings, region only for the other ones."""

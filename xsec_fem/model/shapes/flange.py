@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from xsec_fem.model.shapes.base import Problem, not_below, text
+from xsec_fem.model.shapes.base import Problem, fills, not_below, text
 
 
 @dataclass(frozen=True)
@@ -34,7 +34,7 @@ class Flange:
 def flange_problems(depth: float, flanges: Sequence[Flange]) -> list[Problem]:
     """Return broken rules of one or two flanges on a web within the depth [mm]; two equal ones are named together."""
     total = sum(flange.thickness for flange in flanges)
-    if total >= depth:
+    if fills(total, depth):
         remedy = "Give the thickness of the flange, not its width."
         if len(flanges) == 2 and flanges[0].key == flanges[1].key:
             return [not_below("flange", flanges[0].thickness, depth / 2, "half the depth", remedy)]
@@ -44,9 +44,9 @@ def flange_problems(depth: float, flanges: Sequence[Flange]) -> list[Problem]:
         return [not_below(key, value, depth - flanges[0].thickness, "depth - flange", remedy)]
     taper, found = flanges[0].taper, []
     for flange in flanges:
-        if flange.tip <= 0:
+        if fills(flange.thickness - flange.tip, flange.thickness):
             found.append((2 * flange.thickness / flange.outstand, "must leave some thickness at the flange tip"))
-    if sum(flange.root for flange in flanges) >= depth:
+    if fills(sum(flange.root for flange in flanges), depth):
         limit = 2 * (depth - total) / sum(flange.outstand for flange in flanges)
         found.append((limit, "must leave some web between the flanges"))
     if not found:

@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 import math
+from dataclasses import replace
 from typing import ClassVar
 
 from pydantic import BaseModel, ConfigDict, Field
 
 from xsec_fem.model.arcs import centred_arc, pieces, through_arc
 from xsec_fem.model.outline import Arc, Face, Line, Loop, Point, Segment
-from xsec_fem.model.shapes.base import Pair, Problem, ShapeSpec, crossing_problems, place, text
+from xsec_fem.model.shapes.base import Pair, Problem, ShapeSpec, crossing_problems, near, place, text
 
 _EQUAL = 1e-4  # a centre's two distances may differ by this share: coordinates are typed with 4 or 5 digits
 _NO_AREA = 1e-9  # an area below this share of the size squared is a line walked to and fro
@@ -23,15 +24,18 @@ class Step(BaseModel):
 
     model_config = ConfigDict(frozen=True, extra="forbid")
 
-    to: Pair = Field(description="where the step ends")
-    centre: Pair | None = Field(None, description="of a circular arc, the shorter one")
-    through: Pair | None = Field(None, description="a point on a circular arc, between its ends")
+    to: Pair = Field(description="Give the point [y, z] where the step ends.")
+    centre: Pair | None = Field(None, description="Give the centre [y, z] of the arc.")
+    through: Pair | None = Field(None, description="Give a point [y, z] on the arc.")
 
-    def problem(self, start: Point, key: str) -> Problem | None:
-        """Return what is wrong with the step from `start`, None when it can be drawn; key as in 'steps[2]'."""
+    def problem(self, start: Point, key: str, same: float) -> Problem | None:
+        """Return what is wrong with the step from `start`, None when it can be drawn.
+
+        key : the step's place, 'steps[2]'; same : distance below which two points are one [mm].
+        """
         if self.centre is not None and self.through is not None:
             return Problem(key, "must not have both centre and through", None, "Give one of the two.")
-        if self.to == start:
+        if math.dist(self.to, start) <= same:
             remedy = "Leave the step out; draw a full circle as two arcs."
             return Problem(f"{key}.to", "must differ from where the step starts", place(start), remedy)
         if self.centre is not None:
@@ -66,22 +70,27 @@ class Outline(ShapeSpec):
 
     default_anchor: ClassVar[str] = "origin"
 
-    start: Pair = Field(description="first point")
-    steps: tuple[Step, ...] = Field(min_length=1, description="lines and arcs, each from the end of the one before")
+    start: Pair = Field(description="Give the first point, [y, z].")
+    steps: tuple[Step, ...] = Field(min_length=1, description="Give a list of steps such as {to = [y, z]}.")
 
     def _starts(self) -> list[Point]:
         return [self.start, *(step.to for step in self.steps[:-1])]
 
+    def _same(self) -> float:
+        return near([self.start, *(step.to for step in self.steps)])
+
     def _loop(self) -> Loop:
         segments = [s for start, step in zip(self._starts(), self.steps, strict=True) for s in step.segments(start)]
-        if self.steps[-1].to != self.start:
+        if math.dist(self.steps[-1].to, self.start) > self._same():
             segments.append(Line(self.steps[-1].to, self.start))
+        else:
+            segments[-1] = replace(segments[-1], end=self.start)
         return Loop(tuple(segments))
 
     def problems(self) -> list[Problem]:
         """Steps that cannot be drawn; then an outline without area, or one that crosses itself."""
-        starts = self._starts()
-        found = [step.problem(starts[k], f"steps[{k}]") for k, step in enumerate(self.steps)]
+        starts, same = self._starts(), self._same()
+        found = [step.problem(starts[k], f"steps[{k}]", same) for k, step in enumerate(self.steps)]
         broken = [problem for problem in found if problem is not None]
         if broken:
             return broken

@@ -6,7 +6,7 @@ from pydantic import Field
 
 from xsec_fem.model.rounding import Corner, mirrored
 from xsec_fem.model.section import Wall
-from xsec_fem.model.shapes.base import CorneredShape, NotNegative, Positive, Problem, not_below
+from xsec_fem.model.shapes.base import CorneredShape, NotNegative, Positive, Problem, fills, not_below
 from xsec_fem.model.shapes.flange import Flange, flange_problems
 
 _WEB_REMEDY = "Give the thickness of the web."
@@ -19,15 +19,15 @@ class IShape(CorneredShape):
     way from the web's face to the flange's tip. `toe_radius` rounds the inner edge of the flange tips.
     """
 
-    depth: Positive = Field(description="whole height")
-    width: Positive = Field(description="of the top flange, and of the bottom one unless bottom_width is given")
-    web: Positive = Field(description="thickness of the web")
-    flange: Positive = Field(description="thickness of the flanges, at mid-outstand when tapered")
-    root_radius: NotNegative = Field(0.0, description="between web and flanges")
-    bottom_width: Positive | None = Field(None, description="of the bottom flange when it differs")
-    bottom_flange: Positive | None = Field(None, description="thickness of the bottom flange when it differs")
-    toe_radius: NotNegative = Field(0.0, description="on the inner edge of the flange tips")
-    taper: NotNegative = Field(0.0, description="slope of the inner flange faces, 0.08 for 8 %")
+    depth: Positive = Field(description="Give the whole height.")
+    width: Positive = Field(description="Give the width of the flanges, over all.")
+    web: Positive = Field(description="Give the web's thickness.")
+    flange: Positive = Field(description="Give the flanges' thickness, at mid-outstand when tapered.")
+    root_radius: NotNegative = Field(0.0, description="Give the radius between web and flanges.")
+    bottom_width: Positive | None = Field(None, description="Give the width of the bottom flange.")
+    bottom_flange: Positive | None = Field(None, description="Give the bottom flange's thickness.")
+    toe_radius: NotNegative = Field(0.0, description="Give the radius on the inner edge of the flange tips.")
+    taper: NotNegative = Field(0.0, description="Give the slope of the inner flange faces, 0.08 for 8 %.")
 
     def _flanges(self) -> tuple[Flange, Flange]:
         """Top and bottom."""
@@ -41,9 +41,9 @@ class IShape(CorneredShape):
     def size_problems(self) -> list[Problem]:
         """The web thinner than both widths; the flanges within the depth, their taper possible."""
         found = []
-        if self.web >= self.width:
+        if fills(self.web, self.width):
             found.append(not_below("web", self.web, self.width, "the width", _WEB_REMEDY))
-        if self.bottom_width is not None and self.web >= self.bottom_width:
+        if self.bottom_width is not None and fills(self.web, self.bottom_width):
             found.append(not_below("web", self.web, self.bottom_width, "bottom_width", _WEB_REMEDY))
         return found or flange_problems(self.depth, self._flanges())
 
@@ -76,20 +76,20 @@ class IShape(CorneredShape):
 class Tee(CorneredShape):
     """A tee, flange on top and web down, its bounding box about the origin; numbers as for the I-shape."""
 
-    depth: Positive = Field(description="whole height")
-    width: Positive = Field(description="of the flange")
-    web: Positive = Field(description="thickness of the web")
-    flange: Positive = Field(description="thickness of the flange, at mid-outstand when tapered")
-    root_radius: NotNegative = Field(0.0, description="between web and flange")
-    toe_radius: NotNegative = Field(0.0, description="on the inner edge of the flange tips")
-    taper: NotNegative = Field(0.0, description="slope of the inner flange face, 0.08 for 8 %")
+    depth: Positive = Field(description="Give the whole height.")
+    width: Positive = Field(description="Give the width of the flange.")
+    web: Positive = Field(description="Give the web's thickness.")
+    flange: Positive = Field(description="Give the flange's thickness, at mid-outstand when tapered.")
+    root_radius: NotNegative = Field(0.0, description="Give the radius between web and flange.")
+    toe_radius: NotNegative = Field(0.0, description="Give the radius on the inner edge of the flange tips.")
+    taper: NotNegative = Field(0.0, description="Give the slope of the inner flange face, 0.08 for 8 %.")
 
     def _flange(self) -> Flange:
         return Flange(self.flange, (self.width - self.web) / 2, self.taper)
 
     def size_problems(self) -> list[Problem]:
         """The web thinner than the width, the flange within the depth, its taper possible."""
-        if self.web >= self.width:
+        if fills(self.web, self.width):
             return [not_below("web", self.web, self.width, "the width", _WEB_REMEDY)]
         return flange_problems(self.depth, [self._flange()])
 

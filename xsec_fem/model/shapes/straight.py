@@ -23,9 +23,9 @@ from xsec_fem.model.shapes.base import (
 class Rectangle(CorneredShape):
     """A rectangle about the origin, its corners rounded when `corner_radius` is given."""
 
-    width: Positive = Field(description="size along y")
-    height: Positive = Field(description="size along z")
-    corner_radius: NotNegative = Field(0.0, description="radius of all four corners")
+    width: Positive = Field(description="Give the size along y.")
+    height: Positive = Field(description="Give the size along z.")
+    corner_radius: NotNegative = Field(0.0, description="Give the radius of all four corners.")
 
     def corners(self) -> list[Corner]:
         """Four corners, counter-clockwise from the bottom left."""
@@ -40,9 +40,9 @@ class Polygon(CorneredShape):
 
     default_anchor: ClassVar[str] = "origin"
 
-    points: tuple[Pair, ...] = Field(min_length=3, description="corners [y, z] in order, either way round")
-    radius: NotNegative | None = Field(None, description="radius of all corners")
-    radii: tuple[NotNegative, ...] | None = Field(None, description="radius of each corner, one per point")
+    points: tuple[Pair, ...] = Field(min_length=3, description="Give at least three corners [y, z] in order.")
+    radius: NotNegative | None = Field(None, description="Give the radius of all corners.")
+    radii: tuple[NotNegative, ...] | None = Field(None, description="Give one radius per point, 0 for a sharp corner.")
 
     def corners(self) -> list[Corner]:
         """The points with their radii; sides are named by their ends."""

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from typing import Annotated, ClassVar
 
 from pydantic import Field, Strict
@@ -16,6 +17,7 @@ from xsec_fem.model.shapes.base import (
     Problem,
     ShapeSpec,
     crossing_problems,
+    near,
     place,
     repeated_points,
     too_large,
@@ -30,10 +32,10 @@ class Strip(ShapeSpec):
 
     default_anchor: ClassVar[str] = "origin"
 
-    points: tuple[Pair, ...] = Field(min_length=2, description="mid-line [y, z]")
-    thickness: Positive = Field(description="of the strip")
-    bend_radius: NotNegative | None = Field(None, description="inner radius of all bends; sharp mitres when absent")
-    closed: Annotated[bool, Strict()] = Field(False, description="true: the last point joins the first")
+    points: tuple[Pair, ...] = Field(min_length=2, description="Give the mid-line's points [y, z], at least two.")
+    thickness: Positive = Field(description="Give the strip's thickness.")
+    bend_radius: NotNegative | None = Field(None, description="Give the inner radius of all bends.")
+    closed: Annotated[bool, Strict()] = Field(False, description="Give true to join the last point to the first.")
 
     def _mid_line(self) -> MidLine:
         return MidLine(self.points, self.thickness, self.bend_radius, self.closed)
@@ -47,7 +49,7 @@ class Strip(ShapeSpec):
             remedy = "Give more points, or leave closed out."
             return [Problem("points", "must be at least 3 for a closed strip", f"{len(self.points)} points", remedy)]
         repeated = repeated_points(self.points, "points", closed=False)
-        if len(self.points) > 2 and self.points[0] == self.points[-1]:
+        if len(self.points) > 2 and math.dist(self.points[0], self.points[-1]) <= near(self.points):
             remedy = "Leave it out; closed = true joins the last point to the first."
             key, rule = f"points[{len(self.points) - 1}]", "must not repeat the first point"
             repeated.append(Problem(key, rule, place(self.points[-1]), remedy))
@@ -77,9 +79,9 @@ class Plate(ShapeSpec):
 
     default_anchor: ClassVar[str] = "origin"
 
-    start: Pair = Field(alias="from", description="one end of the mid-line [y, z]")
-    end: Pair = Field(alias="to", description="its other end")
-    thickness: Positive = Field(description="half of it to either side of the mid-line")
+    start: Pair = Field(alias="from", description="Give one end of the mid-line, [y, z].")
+    end: Pair = Field(alias="to", description="Give the other end of the mid-line, [y, z].")
+    thickness: Positive = Field(description="Give the plate's thickness, half of it to either side.")
 
     def problems(self) -> list[Problem]:
         """The two ends must differ."""

@@ -1,0 +1,47 @@
+"""Valid examples of every shape that has a face: plain ones and ones with every option, for tests that hold for all."""
+
+EXAMPLES = [
+    ("rectangle", {"width": 140, "height": 40}),
+    ("rectangle", {"width": 140, "height": 40, "corner_radius": 6}),
+    ("rectangle", {"width": 140, "height": 40, "corner_radius": 20}),
+    ("circle", {"diameter": 12}),
+    ("ellipse", {"width": 50, "height": 30}),
+    ("ellipse", {"width": 30, "height": 50}),
+    ("ellipse", {"width": 30, "height": 30}),
+    ("ring", {"diameter": 200, "thickness": 8}),
+    ("sector", {"radius": 50, "from_deg": 0, "to_deg": 90}),
+    ("sector", {"radius": 50, "from_deg": 90, "to_deg": 270}),
+    ("sector", {"radius": 50, "from_deg": 10, "to_deg": 370}),
+    ("sector", {"radius": 50, "from_deg": -20, "to_deg": 250, "thickness": 6}),
+    ("polygon", {"points": [[0, 0], [60, 0], [60, 20], [20, 25], [10, 80]]}),
+    ("polygon", {"points": [[0, 0], [60, 0], [60, 20], [20, 25], [10, 80]], "radius": 3}),
+    ("polygon", {"points": [[0, 0], [0, 80], [20, 25], [60, 20], [60, 0]], "radii": [0, 2, 9, 5, 10]}),
+    ("outline", {"start": [0, 0], "steps": [{"to": [40, 0]}, {"to": [30, 10], "centre": [30, 0]}, {"to": [0, 10]}]}),
+    ("outline", {"start": [10, 0], "steps": [{"to": [0, -10], "through": [-7.0710678, 7.0710678]}]}),
+    ("strip", {"points": [[0, 0], [100, 0], [100, 60], [150, 90]], "thickness": 4}),
+    ("strip", {"points": [[0, 0], [100, 0], [100, 60], [150, 90]], "thickness": 4, "bend_radius": 6}),
+    ("strip", {"points": [[0, 0], [0, 60], [30, 60]], "thickness": 4, "bend_radius": 0}),
+    ("strip", {"points": [[0, 0], [100, 0], [80, 60], [0, 50]], "thickness": 4, "bend_radius": 5, "closed": True}),
+    ("strip", {"points": [[0, 0], [0, 50], [80, 60], [100, 0]], "thickness": 4, "closed": True}),
+    ("plate", {"from": [0, 0], "to": [30, 40], "thickness": 6}),
+    ("i_shape", {"depth": 300, "width": 150, "web": 7.1, "flange": 10.7, "root_radius": 15}),
+    (
+        "i_shape",
+        {
+            "depth": 300, "width": 125, "web": 10.8, "flange": 16.2, "root_radius": 10.8, "toe_radius": 6.5,
+            "taper": 0.14, "bottom_width": 150, "bottom_flange": 20,
+        },
+    ),
+    ("tee", {"depth": 120, "width": 80, "web": 8, "flange": 10, "root_radius": 9, "toe_radius": 4, "taper": 0.02}),
+    ("channel", {"depth": 200, "width": 75, "web": 8.5, "flange": 11.16, "root_radius": 11.5, "toe_radius": 6,
+                 "taper": 0.08}),
+    ("channel", {"depth": 200, "width": 75, "web": 3, "flange": 2, "root_radius": 4, "lip": 25}),
+    ("angle", {"depth": 150, "width": 90, "thickness": 10, "root_radius": 12, "toe_radius": 5}),
+    ("angle", {"depth": 60, "width": 60, "thickness": 6, "toe_radius": 6}),
+    ("zed", {"depth": 200, "width": 140, "web": 4, "flange": 5, "root_radius": 6}),
+    ("zed", {"depth": 200, "width": 140, "web": 2, "flange": 2.5, "root_radius": 4, "lip": 20}),
+    ("box", {"depth": 60, "width": 120, "web": 3, "flange": 3, "outer_radius": 3, "inner_radius": 1, "cells": 2}),
+    ("box", {"depth": 30, "width": 50, "web": 2, "flange": 3}),
+]  # fmt: skip
+
+IDS = [f"{word}-{'-'.join(list(numbers)[1:])}-{k}" for k, (word, numbers) in enumerate(EXAMPLES)]
