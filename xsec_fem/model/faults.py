@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass, field
-from typing import TypeVar
+from typing import TypeVar, get_args
 
 from pydantic import BaseModel, ValidationError
 from pydantic_core import ErrorDetails, PydanticCustomError
@@ -54,22 +54,22 @@ class FaultList:
         try:
             return model.model_validate(dict(table))
         except ValidationError as error:
-            known = [_key_of(model, name) for name in model.model_fields] + list(also)
-            for detail in _one_per_union(error.errors(include_url=False)):
-                self._note(detail, model, place, kind, known)
+            for detail in _told_once(error.errors(include_url=False)):
+                self._note(detail, model, place, kind, list(also))
             return None
 
-    def _note(self, detail: ErrorDetails, model: type[BaseModel], place: str, kind: str, known: list[str]) -> None:
+    def _note(self, detail: ErrorDetails, model: type[BaseModel], place: str, kind: str, also: list[str]) -> None:
         steps = _steps(detail)
-        if detail["type"] == "missing" and steps and isinstance(steps[-1], str):
-            remedy = _remedy(model, steps) if len(steps) == 1 else ""
-            self.add(_joined(place, _path(steps[:-1])), f"needs {steps[-1]}", None, remedy)
+        if detail["type"] == "missing" and isinstance(steps[-1], str):
+            self.add(_joined(place, _path(steps[:-1])), f"needs {steps[-1]}", None, _remedy(model, steps))
             return
         if detail["type"] == "extra_forbidden":
-            words = known if len(steps) == 1 else []
-            self.add(_joined(place, _path(steps)), f"is not a key of {kind}", None, did_you_mean(steps[-1], words))
+            inner, outer = _table_at(model, steps), len(steps) == 1
+            known = [_key_of(inner, name) for name in inner.model_fields] + (also if outer else [])
+            rule = f"is not a key of {kind}" if outer else f"is not a key of {_path(steps[:-1])}"
+            self.add(_joined(place, _path(steps)), rule, None, did_you_mean(steps[-1], known))
             return
-        if detail["type"] == "missing" and steps:  # an entry of a pair: the pair is the place
+        if detail["type"] == "missing":  # an entry of a pair: the pair is the place
             steps = steps[:-1]
         rule, remedy = _rule(detail)
         key = next((str(step) for step in reversed(steps) if isinstance(step, str)), "")
@@ -88,12 +88,25 @@ def _key_of(model: type[BaseModel], name: str) -> str:
 
 def _remedy(model: type[BaseModel], steps: list[int | str]) -> str:
     """The sentence that the schema holds beside the key, or one made of its phrase; "" when it has none."""
-    if not steps:
-        return ""
-    for name, info in model.model_fields.items():
-        if _key_of(model, name) == steps[0] and info.description:
-            return info.description if info.description.endswith(".") else f"Give {steps[0]} ({info.description})."
+    keys = [step for step in steps if isinstance(step, str)]
+    inner = _table_at(model, steps)
+    for name, info in inner.model_fields.items():
+        if keys and _key_of(inner, name) == keys[-1] and info.description:
+            return info.description if info.description.endswith(".") else f"Give {keys[-1]} ({info.description})."
     return ""
+
+
+def _table_at(model: type[BaseModel], steps: list[int | str]) -> type[BaseModel]:
+    """The schema of the table that holds the last key of a path."""
+    for key in [step for step in steps if isinstance(step, str)][:-1]:
+        annotations = [info.annotation for name, info in model.model_fields.items() if _key_of(model, name) == key]
+        while annotations:
+            annotation = annotations.pop()
+            if isinstance(annotation, type) and issubclass(annotation, BaseModel):
+                model = annotation
+                break
+            annotations.extend(get_args(annotation))
+    return model
 
 
 def _joined(place: str, path: str) -> str:
@@ -119,9 +132,14 @@ def _steps(detail: ErrorDetails) -> list[int | str]:
     return [step for step in loc[: len(loc) - len(last)] if not _is_branch(step)] + last
 
 
-def _one_per_union(details: list[ErrorDetails]) -> list[ErrorDetails]:
-    """Keep one complaint where several branches of a union complain about the same place."""
+def _told_once(details: list[ErrorDetails]) -> list[ErrorDetails]:
+    """Keep one complaint where several branches of a union complain about the same place.
+
+    A list with wrong entries is also called too short by the schema library, which leaves them out when it counts.
+    """
     kept: list[ErrorDetails] = []
+    inner = {detail["loc"][:n] for detail in details for n in range(len(detail["loc"]))}
+    details = [detail for detail in details if detail["type"] != "too_short" or detail["loc"] not in inner]
     seen: set[tuple[int | str, ...]] = set()
     for detail in details:
         steps = tuple(_steps(detail))
@@ -141,6 +159,7 @@ def _rule(detail: ErrorDetails) -> tuple[str, str]:
     if detail["type"] == "literal_error":
         options = re.findall(r"'([^']*)'", str(context["expected"])) or [str(context["expected"])]
         return _one_of(options, detail["input"])
+    context = {**context, "entry": isinstance(detail["loc"][-1], int)} if detail["loc"] else context
     phrase = _RULES.get(detail["type"])
     # the last resort has no wording of its own to pass on: it still says where, and shows the value
     return (phrase(context) if phrase else "has a value that does not fit"), ""
@@ -163,6 +182,7 @@ _NUMBER = _fixed("must be a number")
 _WHOLE = _fixed("must be a whole number")
 _LIST = _fixed("must be a list")
 _TABLE = _fixed("must be a table")
+_PAIR = "must be a pair of numbers [y, z]"  # the only lists of fixed length in a section file are points
 _RULES: dict[str, Callable[[Mapping[str, object]], str]] = {
     "greater_than": _bound(">", "gt"),
     "greater_than_equal": _bound(">=", "ge"),
@@ -180,12 +200,14 @@ _RULES: dict[str, Callable[[Mapping[str, object]], str]] = {
     "bool_type": _fixed("must be true or false"),
     "bool_parsing": _fixed("must be true or false"),
     "list_type": _LIST,
-    "tuple_type": _LIST,
+    "tuple_type": lambda context: _PAIR if context.get("entry") else "must be a list",
     "model_type": _TABLE,
     "model_attributes_type": _TABLE,
     "dict_type": _TABLE,
-    "missing": _fixed("has too few entries"),
+    "missing": _fixed(_PAIR),
     "too_short": lambda context: f"needs at least {context['min_length']} entries",
-    "too_long": lambda context: f"takes at most {context['max_length']} entries",
+    "too_long": lambda context: (
+        _PAIR if context["max_length"] == 2 else f"takes at most {context['max_length']} entries"
+    ),
     "value_error": lambda context: str(context["error"]),
 }

@@ -106,4 +106,4 @@ def _chord_degrees(segment: Segment, chord: float) -> float:
         return 180.0
     # an ellipse is a squeezed circle of its major half axis, and squeezing only brings chord and arc nearer
     radius = segment.radius if hasattr(segment, "radius") else math.hypot(*segment.major)
-    return math.degrees(2 * math.acos(max(0.0, 1 - chord / radius)))
+    return 180.0 if radius <= chord else math.degrees(2 * math.acos(1 - chord / radius))

@@ -15,12 +15,25 @@ _ISOTROPIC_KEYS = ("G", "nu")
 
 def read_materials(table: object, faults: FaultList) -> dict[str, Material]:
     """Return the materials that can be used, by name, in the file's order; every fault is noted in `faults`."""
-    if not isinstance(table, Mapping) or not table:
-        rule = "needs at least one material" if not table else "materials must be tables"
-        faults.add("", rule, None, "Write [materials.steel] with E and nu below it.")
+    remedy = "Write [materials.steel] with E and nu below it."
+    if not table:
+        faults.add("", "needs at least one material", None, remedy)
         return {}
-    read = {str(name): _read_material(str(name), value, faults) for name, value in table.items()}
+    if not isinstance(table, Mapping):
+        faults.add("materials", "must be tables with a name", None, remedy)
+        return {}
+    loose = [str(name) for name, value in table.items() if not isinstance(value, Mapping)]
+    if loose:
+        faults.add("materials", f"holds {listed(loose)} outside of a material", None, remedy)
+    read = {name: _read_material(name, table[name], faults) for name in material_names(table)}
     return {name: material for name, material in read.items() if material is not None}
+
+
+def material_names(table: object) -> list[str]:
+    """Return the names of the materials as typed, whether or not their tables have faults."""
+    return (
+        [str(name) for name, value in table.items() if isinstance(value, Mapping)] if isinstance(table, Mapping) else []
+    )
 
 
 def material_place(name: str) -> str:
@@ -29,11 +42,8 @@ def material_place(name: str) -> str:
     return f"materials.{name if bare else quoted(name)}"
 
 
-def _read_material(name: str, table: object, faults: FaultList) -> Material | None:
+def _read_material(name: str, table: Mapping[str, object], faults: FaultList) -> Material | None:
     place = material_place(name)
-    if not isinstance(table, Mapping):
-        faults.add(place, "must be a table", None, f"Write [{place}] with E and nu below it.")
-        return None
     if not name.strip() or not name.isprintable():
         faults.add(place, "needs a name of printable text", None, "Write [materials.steel].")
         return None

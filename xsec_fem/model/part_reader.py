@@ -11,11 +11,11 @@ from xsec_fem.model.faults import FaultList
 from xsec_fem.model.mesh_region import mesh_region
 from xsec_fem.model.outline import Face, Isometry, Loop
 from xsec_fem.model.placement import moved_walls, placement, turned_grain
-from xsec_fem.model.schema import LARGEST, HoleTable, PartTable, PlacementTable
+from xsec_fem.model.schema import HoleTable, PartTable, PlacementTable
 from xsec_fem.model.section import Part
 from xsec_fem.model.shapes import SHAPES, ShapeSpec
 from xsec_fem.model.shapes.file import FileShape
-from xsec_fem.model.wording import did_you_mean, listed, named, quoted, value_text, with_unit
+from xsec_fem.model.wording import did_you_mean, listed, named, quoted, text_with_unit, value_text
 
 PlacementT = TypeVar("PlacementT", bound=PlacementTable)
 
@@ -83,15 +83,16 @@ def _split(
         return common, None
     word = _word(table)
     spec = faults.read(shape_class, numbers, place, f"shape {quoted(word)}", sorted(skipped))
-    if spec is None or _too_large(numbers, place, faults):
+    if spec is None:
         return common, None
     try:
         problems = spec.problems()
-    except ArithmeticError:
+    except (ArithmeticError, ValueError):
         faults.add(place, "has sizes too far apart to work with", None, "Check the numbers of the shape.")
         return common, None
     for problem in problems:
-        faults.add(f"{place}: {problem.key}", problem.rule, problem.value, problem.remedy)
+        value = text_with_unit(problem.value, problem.key, faults.units)
+        faults.add(f"{place}: {problem.key}", problem.rule, value, problem.remedy)
     return common, None if problems else spec
 
 
@@ -106,27 +107,11 @@ def _shape_class(table: Mapping[str, object], place: str, faults: FaultList) -> 
     return None
 
 
-def _too_large(value: object, place: str, faults: FaultList) -> bool:
-    """True, and a fault noted, when a number in a shape is too large to be a length."""
-    if isinstance(value, Mapping | list):
-        inner = value.items() if isinstance(value, Mapping) else enumerate(value)
-        places = [(f"{place}: {key}" if isinstance(key, str) else f"{place}[{key}]", item) for key, item in inner]
-        found = [_too_large(item, where, faults) for where, item in places]  # a list: all of them, not up to the first
-        return any(found)
-    if not isinstance(value, int | float) or abs(value) <= LARGEST:
-        return False
-    key = place.rpartition(": ")[2].partition("[")[0]
-    shown = with_unit(value, key, faults.units)
-    rule = f"must be between -{LARGEST:g} and {LARGEST:g}"
-    faults.add(place, rule, shown, "Check the number and the units of the file.")
-    return True
-
-
 def _placed_face(spec: ShapeSpec, where: PlacementTable, place: str, faults: FaultList) -> tuple[Face | None, Isometry]:
     try:
         face = spec.face()
         move = placement(face, where.anchor or spec.default_anchor, where.at, where.rotate, where.mirror)
-    except ArithmeticError:
+    except (ArithmeticError, ValueError):
         faults.add(place, "has sizes too far apart to work with", None, "Check the numbers of the shape.")
         return None, Isometry()
     return face.moved(move), move

@@ -4,23 +4,23 @@ from __future__ import annotations
 
 import hashlib
 import os
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import replace
 from pathlib import Path
 
 from xsec_fem.model.cautions import add_cautions
 from xsec_fem.model.faults import FaultList
 from xsec_fem.model.geometry_checks import check_geometry
-from xsec_fem.model.material_reader import read_materials
-from xsec_fem.model.mesh_region import MESH_ENDINGS, found_file
+from xsec_fem.model.material_reader import material_names, read_materials
+from xsec_fem.model.mesh_region import check_one_file, mesh_output
 from xsec_fem.model.part_reader import PlacedPart, read_parts
-from xsec_fem.model.references import check_names_once, check_part_references, check_use
+from xsec_fem.model.references import check_names_once, check_part_references, check_use, names_in
 from xsec_fem.model.request_reader import read_actions, read_cuts, read_joints, read_probes
 from xsec_fem.model.schema import HeadTable, SolveTable
 from xsec_fem.model.section import Material, Part, Section, SolveSettings
 from xsec_fem.model.section_text import parse_tables, read_text
-from xsec_fem.model.wording import did_you_mean, value_text
-from xsec_fem.units import UNIT_SYSTEMS
+from xsec_fem.model.wording import did_you_mean
+from xsec_fem.units import UNIT_SYSTEMS, UnitSystem
 
 _LISTS = ("parts", "joints", "cuts", "probes", "actions")
 _KEYS = ("title", "units", "materials", *_LISTS, "solve")
@@ -52,24 +52,25 @@ def parse_section(text: str, name: str = "", folder: str | os.PathLike[str] = ".
 def section_from_tables(tables: Mapping[str, object], name: str, folder: Path) -> Section:
     """Return the section of tables as the TOML parser gives them; raises InputError as `read_section` does."""
     faults = FaultList(name)
-    head = _read_head(tables, faults)
+    title, units = _read_head(tables, faults)
     lists = {key: _list_of_tables(tables, key, faults) for key in _LISTS}
     for key in _LISTS:
         check_names_once(key, lists[key], faults)
     materials = read_materials(tables.get("materials", {}), faults)
     placed = _read_parts(tables, lists["parts"], folder, faults)
-    part_names = [str(table.get("name")) for table in lists["parts"] if isinstance(table, Mapping)]
-    joints = read_joints(lists["joints"], part_names, faults)
+    joints = read_joints(lists["joints"], names_in(lists["parts"]), faults)
     cuts, probes = read_cuts(lists["cuts"], faults), read_probes(lists["probes"], faults)
     actions = read_actions(lists["actions"], faults)
-    solve = _read_solve(tables.get("solve", {}), folder, faults)
+    whole = [part for part in placed if part is not None]
+    sources = [part.part.mesh_region.path for part in whole if part.part.mesh_region is not None]
+    solve = _read_solve(tables.get("solve", {}), folder, sources, faults)
+    check_one_file([(part.place, part.part) for part in whole], faults)
     check_geometry(placed, joints, probes, faults)
     faults.raise_if_any()
-    whole = [part for part in placed if part is not None]
     check_use(whole, materials, faults)
     section = Section(
-        title=head.title or Path(name).stem if head else "",
-        units=UNIT_SYSTEMS[head.units if head else ""],
+        title=title or Path(name).stem,
+        units=units,
         materials=materials,
         parts=tuple(_without_idle_grain(part.part, materials) for part in whole),
         joints=tuple(joint for _, joint in joints),
@@ -82,13 +83,14 @@ def section_from_tables(tables: Mapping[str, object], name: str, folder: Path) -
     return replace(section, cautions=tuple(faults.cautions))
 
 
-def _read_head(tables: Mapping[str, object], faults: FaultList) -> HeadTable | None:
+def _read_head(tables: Mapping[str, object], faults: FaultList) -> tuple[str, UnitSystem]:
+    """Return title and units; any system stands in for units with a fault, which is raised before they are used."""
     head = faults.read(HeadTable, {key: tables[key] for key in ("title", "units") if key in tables}, "", "the file")
     faults.units = UNIT_SYSTEMS[head.units] if head else None
     for key in tables:
         if key not in _KEYS:
             faults.add(str(key), "is not a key or table of a section file", None, did_you_mean(key, _KEYS))
-    return head
+    return (head.title, UNIT_SYSTEMS[head.units]) if head else ("", next(iter(UNIT_SYSTEMS.values())))
 
 
 def _list_of_tables(tables: Mapping[str, object], key: str, faults: FaultList) -> list[object]:
@@ -105,21 +107,20 @@ def _read_parts(
     if not part_tables and isinstance(tables.get("parts", []), list):
         remedy = "Write [[parts]] with name, material, shape and the shape's numbers below it."
         faults.add("", "needs at least one part", None, remedy)
-    materials = tables.get("materials", {})
-    check_part_references(part_tables, list(materials) if isinstance(materials, Mapping) else [], faults)
+    check_part_references(part_tables, material_names(tables.get("materials")), faults)
     return read_parts(part_tables, folder, faults)
 
 
-def _read_solve(table: object, folder: Path, faults: FaultList) -> SolveSettings:
+def _read_solve(table: object, folder: Path, sources: Sequence[Path], faults: FaultList) -> SolveSettings:
     if not isinstance(table, Mapping):
-        faults.add("solve", "must be a table", value_text(table), "Write [solve] with one bracket.")
+        faults.add("solve", "must be a table", None, "Write [solve] with one bracket.")
         return SolveSettings()
     read = faults.read(SolveTable, table, "solve", "[solve]")
     if read is None:
         return SolveSettings()
     mesh_file = None
     if read.mesh_file is not None:
-        mesh_file = found_file(read.mesh_file, folder, MESH_ENDINGS, "solve: mesh_file", faults)
+        mesh_file = mesh_output(read.mesh_file, folder, sources, "solve: mesh_file", faults)
     return SolveSettings(read.accuracy, read.order, read.nu_effect, mesh_file)
 
 

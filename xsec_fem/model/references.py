@@ -20,6 +20,12 @@ def default_name(kind: str, index: int) -> str:
     return f"{_UNNAMED[kind]} {index + 1}"
 
 
+def names_in(tables: Sequence[object]) -> list[str]:
+    """Return the names in a list of tables as typed, each once, whether or not the tables have other faults."""
+    names = (table.get("name") for table in tables if isinstance(table, Mapping))
+    return list(dict.fromkeys(name for name in names if isinstance(name, str)))
+
+
 def check_names_once(kind: str, tables: Sequence[object], faults: FaultList) -> None:
     """Note every name that a second table of one kind ("parts") repeats; tables as typed."""
     seen: dict[str, int] = {}
@@ -44,7 +50,7 @@ def check_part_references(tables: Sequence[object], material_names: Iterable[str
     known = list(material_names)
     for place, table in parts:
         material, host = table.get("material"), table.get("embedded_in")
-        if isinstance(material, str) and material not in known:
+        if isinstance(material, str) and known and material not in known:
             remedy = did_you_mean(material, known)
             faults.add(f"{place}: material", "is not in [materials]", value_text(material), remedy)
         if isinstance(host, str):

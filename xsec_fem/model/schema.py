@@ -11,6 +11,7 @@ from typing import Annotated, Literal, get_args
 from pydantic import AfterValidator, BaseModel, BeforeValidator, ConfigDict, Field, Strict
 
 from xsec_fem.model.faults import own_words
+from xsec_fem.model.shapes.base import Number
 from xsec_fem.model.wording import did_you_mean, listed
 from xsec_fem.units import UNIT_SYSTEMS
 
@@ -18,18 +19,12 @@ Anchor = Literal[
     "centre", "left", "right", "top", "bottom", "top left", "top right", "bottom left", "bottom right", "origin"
 ]
 LoadPoint = Literal["shear centre", "centroid"]
-LARGEST = 1e9  # beyond it the squares and fourth powers of a section's numbers leave too few digits to work with
+LARGEST = 1e12  # as for the numbers of shapes: their squares and fourth powers must stay finite
 
 
 def _text_name(value: str) -> str:
     if not value.strip() or not value.isprintable():
         raise own_words("must be printable text and not blank")
-    return value
-
-
-def _sized(value: float) -> float:
-    if abs(value) > LARGEST:
-        raise own_words(f"must be between -{LARGEST:g} and {LARGEST:g}", "Check the number and the units of the file.")
     return value
 
 
@@ -50,7 +45,14 @@ def _load_point(value: object) -> object:
     if isinstance(value, str) and value not in get_args(LoadPoint):
         near = did_you_mean(value, get_args(LoadPoint))
         raise own_words('must be "shear centre", "centroid" or a point [y, z]', near if near.startswith("Did") else "")
-    return value if isinstance(value, str) else _pair(value)
+    numbers = isinstance(value, list | tuple) and len(value) == 2 and all(_is_coordinate(item) for item in value)
+    if not numbers and not isinstance(value, str):
+        raise own_words('must be "shear centre", "centroid" or a point [y, z]')
+    return value
+
+
+def _is_coordinate(value: object) -> bool:
+    return isinstance(value, int | float) and not isinstance(value, bool) and abs(value) < LARGEST
 
 
 def _side(value: object) -> object:
@@ -63,11 +65,10 @@ def _side(value: object) -> object:
 
 def _sides(value: object) -> object:
     if not isinstance(value, list) or len(value) != 2:
-        raise own_words('must name two sides, for example ["web", "flange"]')
+        raise own_words("must name two sides")
     return value
 
 
-Number = Annotated[float, Strict(), Field(allow_inf_nan=False), AfterValidator(_sized)]
 Modulus = Annotated[float, Strict(), Field(allow_inf_nan=False, gt=0)]
 Force = Annotated[float, Strict(), Field(allow_inf_nan=False)]
 PoissonRatio = Annotated[float, Strict(), Field(allow_inf_nan=False, gt=-1, le=0.5)]
@@ -171,12 +172,12 @@ class ActionsTable(Table):
     """[[actions]]; forces and moments in the file's units."""
 
     name: Name | None = Field(None, description="Give the load case a name of its own.")
-    N: Force = 0.0
-    Vy: Force = 0.0
-    Vz: Force = 0.0
-    T: Force = 0.0
-    My: Force = 0.0
-    Mz: Force = 0.0
+    N: Force = Field(0.0, description="Give the axial force, tension positive.")
+    Vy: Force = Field(0.0, description="Give the shear force along y.")
+    Vz: Force = Field(0.0, description="Give the shear force along z.")
+    T: Force = Field(0.0, description="Give the torque, positive from y to z.")
+    My: Force = Field(0.0, description="Give the moment that stretches the +z side.")
+    Mz: Force = Field(0.0, description="Give the moment that stretches the -y side.")
     load_point: Annotated[LoadPoint | tuple[Number, Number] | None, BeforeValidator(_load_point)] = Field(
         None, description="Say where Vy and Vz act, or leave it out for the shear centre."
     )
@@ -193,5 +194,5 @@ class SolveTable(Table):
     )
     nu_effect: Flag = Field(True, description="false leaves Poisson's ratio out of the in-plane terms.")
     mesh_file: Annotated[str, Strict()] | None = Field(
-        None, description="Give the mesh file's path, seen from the section file."
+        None, description="Give where to keep the mesh, a .msh or .vtu seen from the section file."
     )

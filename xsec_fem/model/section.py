@@ -64,7 +64,10 @@ class Wall:
 
 @dataclass(frozen=True)
 class Part:
-    """One part: a face in the file's axes, or a region of a mesh file; exactly one of the two is set."""
+    """One part: a face in the file's axes, or a region of a mesh file; exactly one of the two is set.
+
+    `grain_angle` [deg] is in the section's axes: the file's angle, mirrored and turned with the part; 0 when isotropic.
+    """
 
     name: str
     material: str
@@ -124,7 +127,7 @@ class Actions:
 
 @dataclass(frozen=True)
 class SolveSettings:
-    """The [solve] table. `order` None: 4, or the order of the mesh file when that is above 1."""
+    """The [solve] table. `order` None: 4, or that of the parts' mesh file when above 1; `mesh_file`: where to keep it."""
 
     accuracy: float = 0.01
     order: int | None = None

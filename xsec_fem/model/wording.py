@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import difflib
 import json
+import re
 from collections.abc import Iterable
 from datetime import date, datetime, time
 
@@ -64,12 +65,22 @@ def with_unit(value: object, key: str, units: UnitSystem | None) -> str:
     return f"{value_text(value)} {unit}" if unit and _is_numeric(value) else value_text(value)
 
 
+def text_with_unit(text: str | None, path: str, units: UnitSystem | None) -> str | None:
+    """Return a value that is text already, with the unit of the last key of its path ("steps[2].to") when numeric."""
+    unit = unit_of(path.rpartition(".")[2].partition("[")[0], units)
+    numeric = text is not None and re.fullmatch(r"[-+.e\d]+|\([-+.e\d]+, [-+.e\d]+\)", text)
+    return f"{text} {unit}" if unit and numeric else text
+
+
 def did_you_mean(word: object, known: Iterable[str]) -> str:
     """Return 'Did you mean "height"?' for the nearest known word, else a list of the known ones."""
     words = list(known)
     if not words:
         return ""
     if isinstance(word, str):
+        swapped = [name for name in words if sorted(name.casefold().split()) == sorted(word.casefold().split())]
+        if swapped:
+            return f"Did you mean {quoted(swapped[0])}?"
         folded = {name.casefold(): name for name in reversed(words)}
         # 0.55: "hieght", "heigth" and "left top" find their word, while words of another meaning find none
         near = difflib.get_close_matches(word.casefold()[:100], folded, n=1, cutoff=0.55)
