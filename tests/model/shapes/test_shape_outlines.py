@@ -14,6 +14,12 @@ from xsec_fem.model.outline import Arc, EllipseArc, Isometry, Line
 from xsec_fem.model.shapes import SHAPES
 
 SIZED = {"i_shape", "tee", "channel", "angle", "zed", "box"}
+# elsewhere arcs may meet lines at an angle: by intent, or where a toe uses up the whole tip
+SMOOTH = [
+    (word, numbers)
+    for word, numbers in EXAMPLES
+    if word not in {"outline", "sector"} and numbers.get("toe_radius") != numbers.get("thickness", 0)
+]
 QUICK = settings(deadline=None, max_examples=60)
 
 
@@ -44,10 +50,8 @@ def test_loops_are_sound(word, numbers):
     check_loops(shape_of(word, numbers).face())
 
 
-@pytest.mark.parametrize(("word", "numbers"), EXAMPLES, ids=IDS)
+@pytest.mark.parametrize(("word", "numbers"), SMOOTH)
 def test_arcs_and_lines_meet_smoothly_in_rounded_shapes(word, numbers):
-    if word in {"outline", "sector"} or numbers.get("toe_radius") == numbers.get("thickness", 0):
-        pytest.skip("its arcs meet lines at an angle")
     for loop in shape_of(word, numbers).face().loops:
         for here, following in zip(loop.segments, (*loop.segments[1:], loop.segments[0]), strict=True):
             if isinstance(here, Line) and isinstance(following, Line):
@@ -59,10 +63,8 @@ def test_arcs_and_lines_meet_smoothly_in_rounded_shapes(word, numbers):
             assert a @ b > 0
 
 
-@pytest.mark.parametrize(("word", "numbers"), EXAMPLES, ids=IDS)
+@pytest.mark.parametrize(("word", "numbers"), [example for example in EXAMPLES if example[0] in SIZED])
 def test_bounds_are_depth_and_width(word, numbers):
-    if word not in SIZED:
-        pytest.skip("has no depth and width")
     width = max(numbers["width"], numbers.get("bottom_width", 0))
     y0, z0, y1, z1 = shape_of(word, numbers).face().bounds()
     assert (y1 - y0, z1 - z0) == (width, numbers["depth"])
