@@ -79,10 +79,11 @@ def element_loads(batch: Batch, scalar: FloatArray | None, flux: FloatArray | No
     if scalar is not None:
         parts.append((batch.shape_values.T * weights) @ (scalar * batch.det[:, :, None]))
     if flux is not None:
-        q = batch.flux(flux).transpose(0, 1, 3, 2)  # (m, Q, 2, k)
-        gradients = batch.element.gradients(batch.rule.points) * weights[:, None, None]  # (Q, n, 2)
-        table = gradients.transpose(1, 0, 2).reshape(gradients.shape[1], -1)
-        parts.append(table @ q.reshape(len(q), -1, q.shape[3]))
+        q = batch.flux(flux)
+        gradients = (batch.element.gradients(batch.rule.points) * weights[:, None, None]).transpose(
+            2, 1, 0
+        )  # (2, n, Q)
+        parts.append(gradients[0] @ q[..., 0] + gradients[1] @ q[..., 1])
     if not parts:
         raise ValueError(f"a load needs a scalar or a flux (got {scalar!r} and {flux!r})")
     return parts[0] if len(parts) == 1 else parts[0] + parts[1]

@@ -15,7 +15,7 @@ import numpy.typing as npt
 
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.fem.quadrature import Rule, triangle_rule
-from xsec_fem.fem.reference_triangle import LagrangeTriangle
+from xsec_fem.fem.reference_triangle import LagrangeTriangle, lagrange_triangle
 
 FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
@@ -61,17 +61,19 @@ class Batch:
     def flux(self, q: FloatArray) -> FloatArray:
         """Return adj(J) q for vectors q of shape (m, Q, k, 2), same shape."""
         j = self.jacobian[:, :, None]
-        return np.stack(
-            [
-                j[..., 1, 1] * q[..., 0] - j[..., 0, 1] * q[..., 1],
-                j[..., 0, 0] * q[..., 1] - j[..., 1, 0] * q[..., 0],
-            ],
-            axis=-1,
-        )
+        result = by_component(q.shape[:-1])
+        result[..., 0] = j[..., 1, 1] * q[..., 0] - j[..., 0, 1] * q[..., 1]
+        result[..., 1] = j[..., 0, 0] * q[..., 1] - j[..., 1, 0] * q[..., 0]
+        return result
 
     def gradients(self, u: FloatArray) -> FloatArray:
         """Return the gradients at the rule's points, shape (m, Q, k, 2), of nodal values u of shape (N, k)."""
         return physical_gradients(self.element, self.rule.points, u[self.nodes], self.jacobian, self.det)
+
+
+def by_component(shape: tuple[int, ...]) -> FloatArray:
+    """Return an empty array of shape (*shape, 2) in which each component lies together, so that loops over it are long."""
+    return np.moveaxis(np.empty((2, *shape)), 0, -1)
 
 
 def physical_gradients(
@@ -82,7 +84,7 @@ def physical_gradients(
     reference = (table @ u).reshape(len(u), len(points), 2, u.shape[2])
     inverse = (jacobian / det[..., None, None])[:, :, None]
     ref_y, ref_z = reference[:, :, 0], reference[:, :, 1]
-    result = np.empty((*ref_y.shape, 2))
+    result = by_component(ref_y.shape)
     result[..., 0] = inverse[..., 1, 1] * ref_y - inverse[..., 1, 0] * ref_z
     result[..., 1] = inverse[..., 0, 0] * ref_z - inverse[..., 0, 1] * ref_y
     return result
@@ -98,8 +100,11 @@ def map_points(
     """
     x = mesh.nodes[mesh.triangles[elements]]
     if straight:
-        origin, side = x[:, :1], np.stack([x[:, 1] - x[:, 0], x[:, 2] - x[:, 0]], axis=-1)
-        positions = origin + points @ side.transpose(0, 2, 1)
+        side = np.stack([x[:, 1] - x[:, 0], x[:, 2] - x[:, 0]], axis=-1)
+        linear = lagrange_triangle(1).values(points).T
+        positions = by_component((len(x), len(points)))
+        for d in (0, 1):
+            positions[..., d] = x[:, :3, d] @ linear
         jacobian = side[:, None]
     else:
         positions = mesh.element.values(points) @ x

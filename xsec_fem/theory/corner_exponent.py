@@ -1,14 +1,13 @@
 """The exponent of the stress at a corner: u ~ r^lambda, tau ~ r^(lambda - 1), unbounded when lambda < 1.
 
 For antiplane shear in a wedge of sectors with tensors G_k and free sides, u = r^lambda (A cos + B sin) in each sector after the
-affine map G^(-1/2), in which the equation becomes Laplace's. The pair (u, flow/lambda) is carried across a sector of
-mapped angle b by
+affine map G^(-1/2), in which the equation becomes Laplace's. There the pair (u, flow/lambda) is (R cos phase, -g R sin phase) with
+g = sqrt(det G): the phase grows by lambda b over a sector of mapped angle b, and tan phase jumps by the ratio of the g where
+two sectors meet. Free sides mean sin phase = 0, so lambda is where the phase reaches pi. The phase grows with lambda (Sturm's
+oscillation theorem), so there is one such place and none can be missed.
 
-    [cos lambda b, sin lambda b / g; -g sin lambda b, cos lambda b],   g = sqrt(det G),
-
-and lambda is the smallest positive root of flow = 0 on the far side. One material: lambda = pi/w (the method of
-M. L. Williams, Stress singularities resulting from various boundary conditions in angular corners of plates in extension,
-J. Appl. Mech. 19, 1952; the antiplane equation is derived here).
+One material: lambda = pi/w (the method of M. L. Williams, Stress singularities resulting from various boundary conditions in
+angular corners of plates in extension, J. Appl. Mech. 19, 1952; the antiplane equation is derived here).
 """
 
 from __future__ import annotations
@@ -21,8 +20,7 @@ import numpy.typing as npt
 
 FloatArray = npt.NDArray[np.float64]
 
-_SCAN = 400  # steps of the search for a sign change in (0, 1]; roots of one wedge lie at least about 1/4 apart
-_BISECTIONS = 50  # halvings of one step: 1/400/2^50 is below round-off
+_BISECTIONS = 54  # halvings of (0, 1]: 2^-54 is below round-off
 
 
 @dataclass(frozen=True)
@@ -58,21 +56,18 @@ def wedge_exponent(sectors: Sequence[Sector]) -> float:
     """
     pairs = [sector.mapped() for sector in sectors]
 
-    def flow(lam: float) -> float:
-        u, w = 1.0, 0.0
+    def phase(lam: float) -> float:
+        total, before = 0.0, pairs[0][1]
         for angle, g in pairs:
-            c, s = np.cos(lam * angle), np.sin(lam * angle)
-            u, w = c * u + s * w / g, -g * s * u + c * w
-        return w / pairs[0][1]
+            ratio, s, c = before / g, np.sin(total), np.cos(total)
+            total += np.arctan((ratio - 1) * s * c / (c * c + ratio * s * s)) + lam * angle
+            before = g
+        return float(total)
 
-    grid = np.arange(1, _SCAN + 1) / _SCAN
-    values = np.array([flow(lam) for lam in grid])
-    change = np.flatnonzero(values[:-1] * values[1:] < 0)
-    if not len(change):
+    if phase(1.0) <= np.pi:
         return 1.0
-    low, high = grid[change[0]], grid[change[0] + 1]
-    sign = np.sign(values[change[0]])
+    low, high = 0.0, 1.0
     for _ in range(_BISECTIONS):
         middle = (low + high) / 2
-        low, high = (middle, high) if flow(middle) * sign > 0 else (low, middle)
-    return float((low + high) / 2)
+        low, high = (middle, high) if phase(middle) < np.pi else (low, middle)
+    return (low + high) / 2

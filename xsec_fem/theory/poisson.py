@@ -16,6 +16,8 @@ from __future__ import annotations
 import numpy as np
 import numpy.typing as npt
 
+from xsec_fem.fem.mapping import by_component
+
 FloatArray = npt.NDArray[np.float64]
 
 
@@ -27,8 +29,12 @@ def poisson_term(nu: FloatArray, r: FloatArray, a: FloatArray) -> FloatArray:
     a : (k, 2) one row a problem, a = inverse of EI times the unit force [1/(N mm²)].
     Source: Love 1927, ch. XV (module docstring).
     """
-    Nr = r @ nu.transpose(0, 2, 1)
-    ar = r @ a.T
-    rNr = (r * Nr).sum(axis=-1)
-    result: FloatArray = ar[..., None] * Nr[:, :, None, :] - 0.5 * rNr[..., None, None] * a
+    y, z = r[..., 0, None], r[..., 1, None]
+    N = nu[:, None, None]
+    Nr = N[..., 0, 0] * y + N[..., 0, 1] * z, N[..., 1, 0] * y + N[..., 1, 1] * z
+    ar = y * a[:, 0] + z * a[:, 1]
+    half_rNr = 0.5 * (y * Nr[0] + z * Nr[1])
+    result = by_component(ar.shape)
+    for component in (0, 1):
+        result[..., component] = ar * Nr[component] - half_rNr * a[:, component]
     return result

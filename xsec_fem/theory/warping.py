@@ -20,7 +20,7 @@ import numpy.typing as npt
 from xsec_fem.fem.assembly import add_at_nodes, element_loads, stiffness_matrix
 from xsec_fem.fem.dissection import dissection_numbering
 from xsec_fem.fem.linear_solve import NeumannFactor, factorise
-from xsec_fem.fem.mapping import Batch, batches
+from xsec_fem.fem.mapping import Batch, batches, by_component
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.theory.area_properties import AreaProperties
 from xsec_fem.theory.moduli import Moduli
@@ -69,7 +69,9 @@ class WarpingProblem:
 
     def twist_field(self, r: FloatArray) -> FloatArray:
         """Return t = (-z, y) at positions r (m, Q, 2) from the centroid, shape (m, Q, 1, 2) [mm]. Source: Sokolnikoff 1956."""
-        return np.stack([-r[..., 1], r[..., 0]], axis=-1)[:, :, None]
+        t = by_component((*r.shape[:2], 1))
+        t[..., 0, 0], t[..., 0, 1] = -r[..., 1], r[..., 0]
+        return t
 
     def poisson_field(self, part: npt.NDArray[np.int64], r: FloatArray) -> FloatArray:
         """Return -d of unit Vy and Vz for triangles of the parts (m,) at r (m, Q, 2) [mm]: (m, Q, 2, 2). Source: Love 1927."""
