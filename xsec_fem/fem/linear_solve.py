@@ -13,6 +13,7 @@ import numpy as np
 import numpy.typing as npt
 import scipy.sparse as sp
 import scipy.sparse.linalg as spla
+from scipy.sparse.csgraph import connected_components
 
 from xsec_fem.errors import SolveError
 
@@ -79,6 +80,9 @@ def factorise(matrix: sp.csc_matrix, numbering: IntArray, pinned: int) -> Neuman
     Raises SolveError when the matrix is singular beyond the constants (two separate bodies) or not positive.
     """
     size = matrix.shape[0]
+    bodies = connected_components(matrix, directed=False, return_labels=False)
+    if bodies > 1:  # round-off in the pivots would hide it: each body has constants of its own
+        raise SolveError(f"the stiffness matrix of {size} unknowns is singular: the mesh falls into {bodies} bodies")
     diagonal = matrix.diagonal()
     spring = sp.csc_matrix(([diagonal.max()], ([numbering[pinned]], [numbering[pinned]])), shape=(size, size))
     try:

@@ -21,6 +21,7 @@ import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.errors import MeshingError
+from xsec_fem.fem.quadrature import triangle_rule
 from xsec_fem.fem.reference_triangle import LagrangeTriangle, lagrange_triangle, node_count, reflected_numbering
 
 FloatArray = npt.NDArray[np.float64]
@@ -81,13 +82,21 @@ class Mesh:
                 f"triangles use node numbers {self.triangles.min()} to {self.triangles.max()}, "
                 f"but there are {len(self.nodes)} nodes"
             )
+        if not np.isfinite(self.nodes).all():
+            node = int(np.argmin(np.isfinite(self.nodes).all(axis=1)))
+            raise MeshingError(f"node {node} lies at {tuple(self.nodes[node].tolist())}")
+        if self.part_of.min() < 0 or self.part_of.max() >= len(self.part_names):
+            raise MeshingError(
+                f"triangles have part numbers {self.part_of.min()} to {self.part_of.max()}, "
+                f"but there are {len(self.part_names)} part names"
+            )
         missing = np.setdiff1d(np.arange(len(self.part_names)), self.part_of)
         if len(missing):
             raise MeshingError(f"part {self.part_names[missing[0]]!r} has no triangle")
         self._check_orientation()
 
     def _check_orientation(self) -> None:
-        """det J > 0 at the points of a rule exact for it, named element and place otherwise."""
+        """det J > 0 at the nodes and wherever it will be integrated, named element and place otherwise."""
         worst = self.worst_jacobian
         bad = int(np.argmin(worst))
         if worst[bad] <= 0 or not np.isfinite(worst[bad]):
@@ -120,8 +129,8 @@ class Mesh:
 
     @cached_property
     def worst_jacobian(self) -> FloatArray:
-        """(M,) smallest det J over the mean of |det J| of the same triangle, at its nodes and centre; 1 when straight."""
-        points = np.vstack([self.element.nodes, [[1 / 3, 1 / 3]]])
+        """(M,) smallest det J over the mean of |det J| of the same triangle, at its nodes and Gauss points; 1 when straight."""
+        points = np.vstack([self.element.nodes, triangle_rule(4 * self.order - 2).points])
         corner = self.nodes[self.triangles[:, :3]]
         side1, side2 = corner[:, 1] - corner[:, 0], corner[:, 2] - corner[:, 0]
         det0 = side1[:, 0] * side2[:, 1] - side1[:, 1] * side2[:, 0]
