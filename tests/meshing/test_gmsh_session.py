@@ -17,14 +17,13 @@ gmsh = load_gmsh()
 
 
 def test_the_session_is_finalised_also_after_an_error():
-    with pytest.raises(ZeroDivisionError), gmsh_session():
-        assert gmsh.isInitialized()
-        1 / 0  # noqa: B018
+    with pytest.raises(ZeroDivisionError), gmsh_session() as session:
+        print(1 / (session.isInitialized() - 1))
     assert not gmsh.isInitialized()
 
 
 def test_gmsh_errors_carry_its_last_words():
-    with pytest.raises(MeshingError, match="gmsh failed: .*nowhere.msh"), gmsh_session() as session:
+    with pytest.raises(MeshingError, match=r"gmsh failed: .*nowhere\.msh"), gmsh_session() as session:
         session.merge("nowhere.msh")
     assert not gmsh.isInitialized()
 

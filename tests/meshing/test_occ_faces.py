@@ -62,7 +62,7 @@ def test_overlap_names_both_parts_and_the_area(scale):
 
 def test_all_overlaps_are_told_at_once():
     faces = {"a": rectangle(0, 0, 10, 10), "b": rectangle(9, 0, 20, 10), "c": rectangle(19, 0, 30, 10)}
-    with pytest.raises(MeshingError, match="'a' and 'b' overlap by 10 .*'b' and 'c' overlap by 10 "):
+    with pytest.raises(MeshingError, match=r"'a' and 'b' overlap by 10 .*'b' and 'c' overlap by 10 "):
         built(faces)
 
 
