@@ -7,6 +7,7 @@ inner ones too, are images of the even lattice under that map, so that curved tr
 
 from __future__ import annotations
 
+import itertools
 from collections.abc import Callable, Sequence
 
 import numpy as np
@@ -40,7 +41,11 @@ def numbered(vertices: IntArray, positions: FloatArray, order: int, part_of: Int
 
 
 def straight(
-    points: FloatArray, triangles: IntArray, order: int, part_of: IntArray | None = None, names: Sequence[str] = ("solid",)
+    points: FloatArray,
+    triangles: IntArray,
+    order: int,
+    part_of: IntArray | None = None,
+    names: Sequence[str] = ("solid",),
 ) -> Mesh:
     """A triangulation (M, 3) of points (N, 2) with straight sides, raised to the order."""
     shape = lagrange_triangle(1).values(lattice(order) / order)
@@ -184,7 +189,7 @@ def grooved_disc(radius: float, groove: float, n: int, order: int) -> Mesh:
     tip = groove * np.array([np.cos(half), np.sin(half)])
     end = np.arctan2(tip[1], tip[0] - radius)  # of the outer arc, from the circle's centre
     stops = [-end, -0.6 * end, -0.3 * end, 0.3 * end, 0.6 * end, end]
-    pieces = [_arc((radius, 0), radius, a, b) for a, b in zip(stops[:-1], stops[1:], strict=True)]
+    pieces = [_arc((radius, 0), radius, a, b) for a, b in itertools.pairwise(stops)]
     pieces.append(_arc((0, 0), groove, half, -half))
     inward = 0.6 * (half - np.pi / 2) + 0.4 * (end - np.pi / 2)  # well inside the corner between groove and outer arc
     near = tip + 0.6 * radius * np.array([np.cos(inward), np.sin(inward)])
