@@ -25,6 +25,8 @@ _SYNTAX = (
     ("Expected ']'", "opens a table's name that is not closed", "Write [materials.steel] or [[parts]]."),
     ("Unescaped", "has a backslash in a text", 'Write paths with / or in \'single quotes\'.'),
     ("escape", "has a backslash in a text", 'Write paths with / or in \'single quotes\'.'),
+    ("Invalid hex", "has a backslash in a text", "Write paths with / or in 'single quotes'."),
+    ("Invalid date", "has a date that does not exist", 'Put text in "quotes".'),
     ("Illegal character", "has a character that is not allowed here", "Close quotes on the same line."),
     ("Invalid initial character", "has a key that is not allowed", 'Put names with spaces or letters like ü in "quotes".'),
     ("Invalid statement", "is not key = value, [table] or [[list]]", "Put a # before a remark."),
