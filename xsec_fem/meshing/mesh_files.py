@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import contextlib
 import io
+import tempfile
 from collections.abc import Sequence
 from pathlib import Path
 from typing import Any
@@ -58,8 +59,10 @@ def write_mesh_file(path: Path, mesh: Mesh) -> None:
         raise InputError([fault])
     try:
         if ending == ".msh":
-            path.touch()  # gmsh's own message for a folder that does not exist names no cause
-            write_msh(path, mesh)
+            with tempfile.TemporaryDirectory() as folder:  # gmsh says too little of a place it cannot write to
+                draft = Path(folder) / "mesh.msh"
+                write_msh(draft, mesh)
+                path.write_bytes(draft.read_bytes())
             return
         # Nodes of a Lagrange triangle of VTK: corners, edges 01 12 20, then inside as a smaller triangle: gmsh's order
         kind = {1: TRIANGLE, 2: QUADRATIC_TRIANGLE}.get(mesh.order, LAGRANGE_TRIANGLE)
