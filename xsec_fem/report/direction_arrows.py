@@ -13,7 +13,7 @@ FloatArray = npt.NDArray[np.float64]
 _FAINT = 0.02  # no arrow where the stress is below this share of the largest: its direction is of no interest
 _CLOSEST = 0.7  # arrows nearer to each other than this share of the spacing are dropped
 _FINEST = 12  # divisions of a triangle's side at most, when looking for places
-_FULL = 0.9  # a cell of the grid filled to this share with material has its arrow in the middle
+_FULL = 0.75  # a cell of the grid filled to this share with material has its arrow in the middle
 
 
 def direction_arrows(stress: StressField, box: Box, spacing: float) -> tuple[FloatArray, FloatArray]:

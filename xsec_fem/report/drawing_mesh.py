@@ -7,7 +7,7 @@ from dataclasses import dataclass
 import numpy as np
 import numpy.typing as npt
 
-from xsec_fem.results import Result
+from xsec_fem.fem.part_nodes import PartNodes
 
 FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
@@ -46,9 +46,8 @@ class DrawingMesh:
         return [self.places[outline] for outline in self.outlines]
 
 
-def drawing_mesh(result: Result) -> DrawingMesh:
-    """Return the flat triangles (K, 3) and outlines of a result's mesh, lengths in the file's unit."""
-    numbering = result.fields.part_nodes
+def drawing_mesh(numbering: PartNodes, clear: npt.NDArray[np.bool_] | None = None) -> DrawingMesh:
+    """Return the flat triangles (K, 3) and outlines of a mesh's split nodes; `clear` (S,) is all True when None [mm]."""
     flat = small_triangles(numbering.mesh.element.nodes, numbering.mesh.order)
     triangles = numbering.triangles[:, flat].reshape(-1, 3)
     edges = _used_once(triangles)
@@ -58,9 +57,8 @@ def drawing_mesh(result: Result) -> DrawingMesh:
     side1, side2 = places[triangles[:, 1]] - places[triangles[:, 0]], places[triangles[:, 2]] - places[triangles[:, 0]]
     double_area = side1[:, 0] * side2[:, 1] - side1[:, 1] * side2[:, 0]
     area = np.bincount(numbering.part[triangles[:, 0]], double_area / 2)
-    return DrawingMesh(
-        places, triangles, _chained(edges), numbering.part, 2 * area / perimeter, result.away_from_corners
-    )
+    clear = np.ones(len(places), bool) if clear is None else clear
+    return DrawingMesh(places, triangles, _chained(edges), numbering.part, 2 * area / perimeter, clear)
 
 
 def small_triangles(reference_nodes: FloatArray, order: int) -> IntArray:

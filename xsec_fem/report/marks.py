@@ -18,12 +18,13 @@ _AWAY = 0.28  # distance of the label from its point [in]
 
 @dataclass(frozen=True)
 class Mark:
-    """A value [MPa] at (y, z) [mm] in a part."""
+    """A value [MPa] at (y, z) [mm] in a part; `beside_corner` when a singular corner governs it."""
 
     value: float
     y: float
     z: float
     part: str
+    beside_corner: bool = False
 
     def inside(self, box: Box) -> bool:
         """True when the place lies in a box (y0, z0, y1, z1) [mm]."""

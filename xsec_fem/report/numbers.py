@@ -5,11 +5,11 @@ from __future__ import annotations
 import math
 
 _PLAIN_FROM, _PLAIN_BELOW = 1e-3, 1e6  # outside this range an exponent is easier to read than zeros
-_NOISE = 1e-9  # values below this share of what they are compared with are round-off and shown as 0
+_NOISE = 1e-6  # values below this share of what they are compared with are noise of the mesh and shown as 0
 
 
 def number(value: float, digits: int = 5, scale: float = 0.0) -> str:
-    """Return the value with that many significant digits, "0" when it is round-off beside `scale` (same unit).
+    """Return the value with that many significant digits, "0" when it is noise beside `scale` (same unit).
 
     Whole digits are never rounded away below 1e6: 197528.6 becomes "197529".
     """

@@ -120,7 +120,12 @@ def make_plan(
     if below:
         detail_box = (_EDGE + _LEFT, bottom, min(width, 1.6 * _DETAIL), _DETAIL)
     elif detail:
-        detail_box = (drawing[0] + width + _DETAIL_GAP, drawing[1] + max(0.0, height - _DETAIL) / 2, _DETAIL, min(_DETAIL, height))
+        detail_box = (
+            drawing[0] + width + _DETAIL_GAP,
+            drawing[1] + max(0.0, height - _DETAIL) / 2,
+            _DETAIL,
+            min(_DETAIL, height),
+        )
     bar_left = (detail_box[0] + _DETAIL if detail_box and not below else drawing[0] + width) + _BAR_GAP
     bar_box = (bar_left, drawing[1], _BAR, height) if bar else None
     middle = ((box[0] + box[2]) / 2, (box[1] + box[3]) / 2)

@@ -13,7 +13,7 @@ from xsec_fem.report.drawing_mesh import DrawingMesh
 from xsec_fem.report.marks import Mark, draw_marks
 from xsec_fem.report.numbers import number, point
 from xsec_fem.report.sheet import INK, NOTE, SUBTITLE, Box, Sheet, make_plan, make_sheet, paper_scale, show_window
-from xsec_fem.report.wording import actions_text, load_point_text
+from xsec_fem.report.wording import actions_text, load_point_text, section_size
 from xsec_fem.results import CaseResult, Result
 
 if TYPE_CHECKING:
@@ -94,20 +94,16 @@ def _actions_line(result: Result, case: CaseResult) -> str:
     units = result.section.units
     place = load_point_text(case.actions, units)
     size = abs(case.forces.Vy) + abs(case.forces.Vz)
-    torque = number(case.T_total, scale=size * _size(result))
+    torque = number(case.T_total, scale=size * section_size(result))
     total = f"; total torque about the shear centre {torque} {units.moment}" if torque != "0" else ""
     return actions_text(case.actions, units) + (f" {place}" if place else "") + total
-
-
-def _size(result: Result) -> float:
-    return float(np.ptp(result.mesh.nodes, axis=0).max())
 
 
 def _extremes(case: CaseResult, quantity: Quantity, mesh: DrawingMesh) -> list[Mark]:
     """Largest value first; for a signed field its other extreme too when it is worth it."""
     if not quantity.signed:
         top = case.tau_max
-        return [Mark(top.value, top.y, top.z, top.part)]
+        return [Mark(top.value, top.y, top.z, top.part, top.beside_corner)]
     values, clear = getattr(case.stress, quantity.key), np.flatnonzero(mesh.clear)
     clear = clear if len(clear) else np.arange(len(values))
     ends = clear[[np.argmax(values[clear]), np.argmin(values[clear])]]
@@ -123,12 +119,13 @@ def _shown(marks: list[Mark], quantity: Quantity) -> tuple[float, float]:
 
 
 def _mark_notes(marks: list[Mark], quantity: Quantity, result: Result) -> list[str]:
-    units, size = result.section.units, _size(result)
+    units, size = result.section.units, section_size(result)
     notes = []
     for mark in marks:
         name = "Largest" if not quantity.signed else ("Highest" if mark.value > 0 else "Lowest")
         place = f"at (y, z) = {point(mark.y, mark.z, size)} {units.length}"
-        notes.append(f"{name} {quantity.symbol} = {number(mark.value)} {units.stress} {place} in {mark.part}.")
+        tail = " It is governed by the corner beside it." if mark.beside_corner else ""
+        notes.append(f"{name} {quantity.symbol} = {number(mark.value)} {units.stress} {place} in {mark.part}.{tail}")
     return notes
 
 
@@ -139,11 +136,15 @@ def _notes(result: Result, canvas: Canvas, scale: ColourScale, quantity: Quantit
     if result.corners:
         distances = [corner.distance for corner in result.corners]
         reach = number(max(distances), 3)
-        within = f"within {reach} {result.section.units.length}" if np.ptp(distances) < 1e-9 * max(distances) else "close"
+        within = (
+            f"within {reach} {result.section.units.length}" if np.ptp(distances) < 1e-9 * max(distances) else "close"
+        )
         small = max(distances) * paper_scale(canvas.mesh.box) < _SMALL_RING
         note = f"Rings: corners where the stress has no limit; stress not read within the ring ({within} of the corner"
         note += "; the rings are drawn larger)." if small else ")."
-        beyond = " Values beyond the colour bar occur only there: its end is extended." if scale.extend != "neither" else ""
+        beyond = (
+            " Values beyond the colour bar occur only there: its end is extended." if scale.extend != "neither" else ""
+        )
         notes.append(note + beyond)
     tail = " Arrows show the direction of τ, not its size." if quantity.key == "tau" else ""
     notes.append("y to the right, z up; stresses on the face that looks at you (+x)." + tail)
@@ -165,7 +166,9 @@ def _open_detail(sheet: Sheet, focus: tuple[tuple[float, float], float], unit: s
         raise ValueError(f"the page has no detail: {sheet.plan}")
     box = show_window(detail, focus[0], focus[1], unit)
     scale = sheet.plan.detail[3] / focus[1]
-    detail.set_title(f"Detail, {number(scale / sheet.plan.scale, 2)} times larger", size=SUBTITLE, color=INK, loc="left")
+    detail.set_title(
+        f"Detail, {number(scale / sheet.plan.scale, 2)} times larger", size=SUBTITLE, color=INK, loc="left"
+    )
     least = 0.12 / sheet.plan.scale  # a frame that can be seen
     size = (max(box[2] - box[0], least), max(box[3] - box[1], least))
     corner = (focus[0][0] - size[0] / 2, focus[0][1] - size[1] / 2)
@@ -245,5 +248,3 @@ def _colour_bar(sheet: Sheet, filled: object, scale: ColourScale, label: str) ->
 
 def _height_of(sheet: Sheet) -> float:
     return sheet.plan.bar[3] if sheet.plan.bar else 1.0
-
-

@@ -5,8 +5,11 @@ from __future__ import annotations
 import re
 import unicodedata
 
+import numpy as np
+
 from xsec_fem.model.section import Actions
 from xsec_fem.report.numbers import number
+from xsec_fem.results import Result
 from xsec_fem.units import UnitSystem
 
 _FORCES, _MOMENTS = ("N", "Vy", "Vz"), ("T", "My", "Mz")
@@ -48,3 +51,13 @@ def unique_slugs(names: list[str]) -> list[str]:
             text = f"{base}_{count}"
         found.append(text)
     return found
+
+
+def counted(count: int, noun: str) -> str:
+    """Return "1 node", "3 nodes"."""
+    return f"{count} {noun}" + ("" if count == 1 else "s")
+
+
+def section_size(result: Result) -> float:
+    """Return the larger side of the section's bounding box [mm]; tells round-off from values."""
+    return float(np.ptp(result.mesh.nodes, axis=0).max())

@@ -1,0 +1,92 @@
+"""What a solve leaves behind: the folder, pictures, fields.vtu, joints.csv and, last, results.json."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from pathlib import Path
+
+import numpy as np
+
+from xsec_fem.errors import Fault, InputError
+from xsec_fem.meshing.vtu_fields import write_fields
+from xsec_fem.report.joint_table import joints_csv
+from xsec_fem.report.wording import unique_slugs
+from xsec_fem.results import CaseResult, Result
+
+
+def output_folders(files: Sequence[Path], out: Path | None) -> list[Path]:
+    """Return one folder a section file: out/<stem>, or `out` itself for a single file, or out/<stem> below it.
+
+    Files of the same stem get folders stem, stem_2, ... so that none overwrites another.
+    """
+    if out is not None and len(files) == 1:
+        return [out]
+    folders: list[Path] = []
+    for file in files:
+        base = folder = (out or Path("out")) / file.stem
+        count = 1
+        while folder in folders:
+            count += 1
+            folder = base.with_name(f"{base.name}_{count}")
+        folders.append(folder)
+    return folders
+
+
+def make_folder(folder: Path) -> None:
+    """Make the folder and those above it; InputError when it cannot be made."""
+    try:
+        folder.mkdir(parents=True, exist_ok=True)
+    except OSError as error:
+        raise _unwritable(folder, error) from error
+
+
+def write_numbers(result: Result, folder: Path) -> list[Path]:
+    """Write fields.vtu, and joints.csv when there are joints; return the files. Raises InputError when it cannot."""
+    files = [folder / "fields.vtu"]
+    try:
+        write_fields(files[0], result.mesh, vtu_fields(result))
+        if any(case.joints for case in result.cases):
+            files.append(folder / "joints.csv")
+            files[-1].write_text(joints_csv(result), encoding="utf-8")
+    except OSError as error:
+        raise _unwritable(folder, error) from error
+    return files
+
+
+def write_json(result: Result, folder: Path) -> Path:
+    """Write results.json and return it; InputError when it cannot be written."""
+    file = folder / "results.json"
+    try:
+        file.write_text(result.to_json(), encoding="utf-8")
+    except OSError as error:
+        raise _unwritable(folder, error) from error
+    return file
+
+
+def vtu_fields(result: Result) -> dict[str, np.ndarray]:
+    """Return the point fields of all cases at the nodes of each triangle, (M, n) or (M, n, 3) [MPa].
+
+    Names: tau_xy, tau_xz, tau, tau_vector, sigma_x, von_mises; behind the case's name when there are several.
+    """
+    nodes = result.fields.part_nodes.triangles
+    prefixes = unique_slugs([case.name for case in result.cases]) if len(result.cases) > 1 else [""]
+    fields: dict[str, np.ndarray] = {}
+    for case, prefix in zip(result.cases, prefixes, strict=False):
+        for name, values in _fields_of(case).items():
+            fields[f"{prefix} {name}".strip()] = values[nodes]
+    return fields
+
+
+def _fields_of(case: CaseResult) -> dict[str, np.ndarray]:
+    stress = case.stress
+    vector = np.column_stack([stress.tau_components, np.zeros(len(stress.tau))])
+    return {
+        "tau_xy": stress.tau_xy, "tau_xz": stress.tau_xz, "tau": stress.tau, "tau_vector": vector,
+        "sigma_x": stress.sigma_x, "von_mises": stress.von_mises,
+    }  # fmt: skip
+
+
+def _unwritable(folder: Path, error: OSError) -> InputError:
+    reason = (error.strerror or str(error)).lower()
+    remedy = "Give another folder with --out"
+    return InputError([Fault("", f"output folder {folder}", f"cannot be written: {reason}", None, remedy)])
