@@ -231,7 +231,7 @@ GARBAGE = {
 def test_garbage_gets_a_plain_message_and_prints_nothing(tmp_path, capfd, name, ending):
     path = tmp_path / f"m{ending}"
     path.write_bytes(GARBAGE[name])
-    with pytest.raises(InputError, match=r"(cannot be read as a mesh: \S+|has no triangles)") as caught:
+    with pytest.raises(InputError, match=r"(cannot be read as a mesh \(\S+|has no triangles)") as caught:
         read_mesh_file(path)
     assert "Traceback" not in str(caught.value)
     assert "\n" not in str(caught.value)
@@ -239,7 +239,7 @@ def test_garbage_gets_a_plain_message_and_prints_nothing(tmp_path, capfd, name, 
 
 
 def test_a_missing_file_is_told(tmp_path):
-    with pytest.raises(InputError, match=r"cannot be read as a mesh: .*not found"):
+    with pytest.raises(InputError, match=r"nowhere\.vtu does not exist\. Check the path"):
         read_mesh_file(tmp_path / "nowhere.vtu")
 
 

@@ -42,7 +42,7 @@ def read_mesh_file(path: Path) -> FileMesh:
         found = _from_meshio(path, _loaded(path))
     except _Unreadable as error:
         if path.suffix.lower() != ".msh":
-            raise file_error(path, f"cannot be read as a mesh: {error}", _REMEDY) from error
+            raise file_error(path, f"cannot be read as a mesh ({error})", _REMEDY) from error
         found = _by_gmsh(path, error)
     triangles = _checked(path, found)
     return FileMesh(_in_plane(path, found), triangles, found.regions)
@@ -72,11 +72,11 @@ def write_mesh_file(path: Path, mesh: Mesh) -> None:
 
 
 class _Unreadable(Exception):
-    """meshio could not read a file, whatever way it said so."""
+    """meshio could not read a file; the text is what it said."""
 
 
 def _loaded(path: Path) -> Any:
-    """The file as a meshio mesh; every way in which meshio fails, exit included, becomes _Unreadable."""
+    """The file as a meshio mesh. Its readers are called by name: `meshio.read` guesses, prints, and exits the process."""
     try:
         import meshio
     except ImportError as error:
@@ -84,13 +84,14 @@ def _loaded(path: Path) -> Any:
             f"meshio cannot be loaded ({error}), {path.name} needs it: run `xsec-fem doctor`, it prints the command "
             "that mends it"
         ) from error
-    said = io.StringIO()
+    if not path.is_file():
+        raise file_error(path, "does not exist", "Check the path")
+    read = meshio.gmsh.read if path.suffix.lower() == ".msh" else meshio.vtu.read
     try:
-        with contextlib.redirect_stdout(said), contextlib.redirect_stderr(said):
-            return meshio.read(path, file_format="gmsh" if path.suffix.lower() == ".msh" else "vtu")
-    except (Exception, SystemExit) as error:
-        text = " ".join(said.getvalue().split()) or f"{type(error).__name__}: {error}"
-        raise _Unreadable(text) from error
+        with contextlib.redirect_stdout(io.StringIO()), contextlib.redirect_stderr(io.StringIO()):
+            return read(str(path))
+    except Exception as error:  # its readers let anything through: ValueError, KeyError, IndexError, ParseError ...
+        raise _Unreadable(" ".join(str(error).split()) or f"it does not look like a {path.suffix} file") from error
 
 
 def _from_meshio(path: Path, raw: Any) -> FileMesh:
@@ -140,7 +141,7 @@ def _by_gmsh(path: Path, first: _Unreadable) -> FileMesh:
     try:
         return read_msh(path)
     except (MeshingError, MissingLibraryError) as error:
-        raise file_error(path, f"cannot be read as a mesh: {first}", _REMEDY) from error
+        raise file_error(path, f"cannot be read as a mesh ({first})", _REMEDY) from error
 
 
 def _in_plane(path: Path, found: FileMesh) -> FloatArray:

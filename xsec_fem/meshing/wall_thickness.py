@@ -60,7 +60,7 @@ def _ray_lengths(
     result = np.full(len(points), np.inf)
     along = chords.end - chords.start
     rows = max(1, _BLOCK // len(along))
-    with np.errstate(divide="ignore", invalid="ignore"):
+    with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
         for begin in range(0, len(points), rows):
             part = slice(begin, begin + rows)
             d = directions[part, None]
