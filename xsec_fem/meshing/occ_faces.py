@@ -8,21 +8,21 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from itertools import pairwise
 from typing import Any
 
 import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.errors import Fault, InputError, MeshingError
-from xsec_fem.model.outline import Arc, EllipseArc, Face, Line, Loop, Point, Segment
+from xsec_fem.model.outline import Arc, Face, Line, Loop, Point, Segment
 from xsec_fem.model.section import Part, Section
 
 FloatArray = npt.NDArray[np.float64]
 
 _FAR = 16.0  # a section farther from the origin than this many diameters is shifted there
-_QUARTER = math.pi / 2 + 1e-6  # arcs longer than this are halved: the kernel takes arcs below 180 degrees only
-_AREA = 1e-12  # an overlap below this share of the section's squared diameter is the kernel's round-off
+_QUARTER = 90.0  # degrees: the kernel takes arcs below 180 only, and a quarter keeps symmetric outlines symmetric
 
 
 @dataclass(frozen=True)
@@ -95,7 +95,7 @@ def _point(gmsh: Any, point: Point, frame: Frame) -> int:
 
 def _curves(gmsh: Any, loop: Loop, frame: Frame) -> list[int]:
     """Draw the segments of one loop, consecutive ones sharing their vertex."""
-    pieces = [piece for segment in loop.segments for piece in _halved(segment)]
+    pieces = [piece for segment in loop.segments for piece in _quarters(segment)]
     corners = [_point(gmsh, piece.start, frame) for piece in pieces]
     return [
         _curve(gmsh, piece, start, end, frame)
@@ -118,40 +118,10 @@ def _curve(gmsh: Any, segment: Segment, start: int, end: int, frame: Frame) -> i
     return int(tag)
 
 
-def _halved(segment: Segment) -> list[Segment]:
-    """Cut an arc in halves until none is longer than a quarter turn."""
-    if isinstance(segment, Line):
-        return [segment]
-    if isinstance(segment, Arc):
-        sweep = segment.sweep
-        middle = segment.polyline(math.degrees(abs(sweep)) / 2)[1]
-        halves: list[Segment] = [
-            Arc(segment.start, middle, segment.centre, segment.ccw),
-            Arc(middle, segment.end, segment.centre, segment.ccw),
-        ]
-    else:
-        sweep, middle = _ellipse_middle(segment)
-        halves = [
-            EllipseArc(segment.start, middle, segment.centre, segment.major, segment.ratio, segment.ccw),
-            EllipseArc(middle, segment.end, segment.centre, segment.major, segment.ratio, segment.ccw),
-        ]
-    return [segment] if abs(sweep) <= _QUARTER else [piece for half in halves for piece in _halved(half)]
-
-
-def _ellipse_middle(arc: EllipseArc) -> tuple[float, Point]:
-    """Return the signed sweep of the parameter and the point at its middle."""
-    major, centre = np.array(arc.major), np.array(arc.centre)
-    minor = arc.ratio * np.array([-major[1], major[0]])
-    scale = major @ major
-
-    def parameter(point: Point) -> float:
-        d = np.array(point) - centre
-        return math.atan2(float(d @ minor) / (arc.ratio**2 * scale), float(d @ major) / scale)
-
-    start = parameter(arc.start)
-    sweep = (parameter(arc.end) - start) % (2 * math.pi) - (0.0 if arc.ccw else 2 * math.pi)
-    middle = centre + major * math.cos(start + sweep / 2) + minor * math.sin(start + sweep / 2)
-    return sweep, (float(middle[0]), float(middle[1]))
+def _quarters(segment: Segment) -> list[Segment]:
+    """Cut an arc evenly into pieces no longer than a quarter turn."""
+    points = [*segment.polyline(_QUARTER), segment.end]
+    return [replace(segment, start=start, end=end) for start, end in pairwise(points)]
 
 
 def _fragments(gmsh: Any, drawn: list[int], points: list[int]) -> dict[int, list[int]]:
