@@ -106,7 +106,8 @@ def _check_bodies(
                 f"{who} meet in a single point at {where}: nothing is carried there, and stresses grow without limit."
             )
             faults.caution("point contact", message)
-    main = max(found, key=lambda body: (len(body), sum(pieces[k].solid.area for k in body)))
+    # six digits of the area, so that of equal bodies the first is the main one, whatever the round-off
+    main = max(found, key=lambda body: (len(body), float(f"{sum(pieces[k].solid.area for k in body):.6g}")))
     loose = [body for body in found if body is not main]
     if all(len(body) == 1 for body in loose):
         for (k,) in loose:

@@ -59,6 +59,9 @@ def contact(first: Piece, second: Piece) -> Contact:
         point = nearest_points(first.solid, second.solid)[0]
         return Contact("none", distance, (point.x, point.y))
     shared = shapely.line_merge(first.solid.boundary.intersection(second.near))
+    if shared.is_empty:  # one lies deep in the other
+        inner = first.solid.intersection(second.solid).representative_point()
+        return Contact("line", 0.0, (inner.x, inner.y))
     run = max(shapely.get_parts(shared), key=lambda line: line.length)
     wide = shapely.line_merge(first.solid.boundary.intersection(second.wider))
     longest = max(line.length for line in shapely.get_parts(wide))
