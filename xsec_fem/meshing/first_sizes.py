@@ -11,7 +11,7 @@ import numpy.typing as npt
 from xsec_fem.meshing.curves import Curve, read_curves, sharp_corners, slit_curves
 from xsec_fem.meshing.occ_faces import Geometry
 from xsec_fem.meshing.sizing import SizeField
-from xsec_fem.meshing.wall_thickness import wall_samples
+from xsec_fem.meshing.wall_thickness import WallSamples, wall_samples
 from xsec_fem.model.section import Part, Section
 
 FloatArray = npt.NDArray[np.float64]
@@ -20,7 +20,7 @@ GROWTH = 0.8  # sizes grow by no more than this times the distance
 
 _ACROSS = 10.0  # elements over the diameter of a solid section
 _SAMPLES = 40.0  # boundary samples over the diameter
-_LATTICE = 16.0  # points inside, where nothing is asked for, over the diameter
+_DEPTHS = 2.0 ** np.arange(1, 12)  # depths of points inside, as multiples of the size on the outline
 _LAYER = 100.0  # walls thinner than the diameter over this are layers, whose triangles may be long
 _LONG = 10.0  # as long as this times their thickness
 _PER_QUARTER = {1: 16, 2: 8, 3: 6, 4: 4, 5: 4}  # elements per quarter circle
@@ -36,19 +36,14 @@ def first_sizes(gmsh: Any, section: Section, geometry: Geometry, order: int) -> 
     """
     bounds = np.array([part.face.bounds() for part in section.parts if part.face is not None])
     diameter = float(np.hypot(*(bounds[:, 2:].max(axis=0) - bounds[:, :2].min(axis=0))))
-    walls = [wall_samples(*_outlines(section, part), diameter / _SAMPLES) for part in section.parts]
-    points = np.vstack([wall.points for wall in walls])
-    thickness = np.concatenate([wall.thickness for wall in walls])
-    radius = np.concatenate([wall.radius for wall in walls])
-    sizes = np.minimum(_wall_size(thickness, diameter, order), radius * (np.pi / 2) / _PER_QUARTER[order])
-    field = SizeField(points, sizes).with_points(*_lattice(bounds, diameter))
+    walls = _joined([wall_samples(*_outlines(section, part), diameter / _SAMPLES) for part in section.parts])
+    sizes = np.minimum(_wall_size(walls.thickness, diameter, order), walls.radius * (np.pi / 2) / _PER_QUARTER[order])
+    field = SizeField(walls.points, sizes).with_points(*_depths(walls, sizes, diameter))
     curves = read_curves(gmsh, geometry)
     field = field.with_points(*_short_curves(curves, geometry, diameter))
     is_slit = slit_curves(curves, section.joints, geometry.part_names)
     corners = geometry.frame.from_gmsh(sharp_corners(curves, is_slit))
-    return (
-        field.with_points(*_corner_rings(corners, points, np.minimum(thickness, diameter))) if len(corners) else field
-    )
+    return field.with_points(*_corner_rings(corners, walls, diameter)) if len(corners) else field
 
 
 def _outlines(section: Section, part: Part) -> tuple[Any, list[Any]]:
@@ -59,11 +54,18 @@ def _outlines(section: Section, part: Part) -> tuple[Any, list[Any]]:
     return part.face.outer, [*part.face.holes, *inner]
 
 
-def _lattice(bounds: FloatArray, diameter: float) -> tuple[FloatArray, FloatArray]:
-    """Points all over the section with the largest size, so that sizes can grow away from the outlines."""
-    step = diameter / _LATTICE
-    axes = [np.arange(bounds[:, k].min() + step / 2, bounds[:, k + 2].max(), step) for k in (0, 1)]
-    points = np.stack(np.meshgrid(*axes), axis=-1).reshape(-1, 2)
+def _joined(walls: Sequence[WallSamples]) -> WallSamples:
+    return WallSamples(
+        np.vstack([wall.points for wall in walls]), np.vstack([wall.normals for wall in walls]),
+        np.concatenate([wall.thickness for wall in walls]), np.concatenate([wall.radius for wall in walls]),
+    )  # fmt: skip
+
+
+def _depths(walls: WallSamples, sizes: FloatArray, diameter: float) -> tuple[FloatArray, FloatArray]:
+    """Points inside with the largest size, at growing depths up to half the wall, so that sizes can grow away from it."""
+    depths = sizes[:, None] * _DEPTHS
+    sample, step = np.nonzero(depths <= np.minimum(walls.thickness, diameter)[:, None] / 2)
+    points = walls.points[sample] + depths[sample, step, None] * walls.normals[sample]
     return points, np.full(len(points), diameter / _ACROSS)
 
 
@@ -83,11 +85,11 @@ def _short_curves(curves: Sequence[Curve], geometry: Geometry, diameter: float) 
     return points, _wall_size(length, diameter, 3)
 
 
-def _corner_rings(corners: FloatArray, points: FloatArray, thickness: FloatArray) -> tuple[FloatArray, FloatArray]:
+def _corner_rings(corners: FloatArray, walls: WallSamples, diameter: float) -> tuple[FloatArray, FloatArray]:
     """Points and sizes about sharp corners (k, 2): a share of the thinnest wall near by, growing with the distance."""
-    distance = np.hypot(corners[:, 0, None] - points[:, 0], corners[:, 1, None] - points[:, 1])
-    nearest = np.argpartition(distance, min(3, len(points) - 1), axis=1)[:, :4]
-    size = thickness[nearest].min(axis=1) / _CORNER
+    distance = np.hypot(corners[:, 0, None] - walls.points[:, 0], corners[:, 1, None] - walls.points[:, 1])
+    nearest = np.argpartition(distance, min(3, len(walls.points) - 1), axis=1)[:, :4]
+    size = np.minimum(walls.thickness, diameter)[nearest].min(axis=1) / _CORNER
     radii = size[:, None] * _RINGS
     rose = np.column_stack([np.cos(_ROSE), np.sin(_ROSE)])
     rings = corners[:, None, None] + radii[:, :, None, None] * rose

@@ -19,9 +19,11 @@ _BLOCK = 1_000_000  # ray and chord pairs at a time: a few arrays of 8 MB
 
 @dataclass(frozen=True)
 class WallSamples:
-    """Points (n, 2) on an outline; wall thickness (n,), inf where no face lies opposite; radius (n,), inf if straight."""
+    """Points (n, 2) on an outline and their inward normals (n, 2); thickness of the wall (n,), inf where no face lies
+    opposite; radius of the outline (n,), inf where straight."""
 
     points: FloatArray
+    normals: FloatArray
     thickness: FloatArray
     radius: FloatArray
 
@@ -50,7 +52,8 @@ def wall_samples(outer: Loop, holes: Sequence[Loop], spacing: float) -> WallSamp
     rank = np.arange(len(chord)) - np.repeat(np.cumsum(count) - count, count)
     points = chords.start[chord] + along[chord] * ((rank + 0.5) / count[chord])[:, None]
     normal = np.column_stack([-along[:, 1], along[:, 0]]) / length[:, None]
-    return WallSamples(points, _ray_lengths(points, normal[chord], chord, chords, normal), chords.radius[chord])
+    thickness = _ray_lengths(points, normal[chord], chord, chords, normal)
+    return WallSamples(points, normal[chord], thickness, chords.radius[chord])
 
 
 def _ray_lengths(
