@@ -40,7 +40,7 @@ def main(argv: Sequence[str] | None = None) -> int:
     try:
         return _run(words)
     except BrokenPipeError:
-        sys.stdout = open(os.devnull, "w")  # noqa: SIM115: the reader has gone; nothing is left to say
+        sys.stdout = open(os.devnull, "w")  # noqa: SIM115 (the reader has gone; nothing is left to say)
         return INTERRUPTED
     except KeyboardInterrupt:
         return INTERRUPTED

@@ -52,6 +52,7 @@ def wrapped(text: str, size: float, width: float, bold: bool = False) -> list[st
 def _kept_together(text: str) -> str:
     """Put spaces that do not break around "=" and between a number and its unit."""
     text = " ".join(text.split()).replace(" = ", "\u00a0=\u00a0")
+    text = re.sub(r"(\([^(), ]+,) ([^(), ]+\))", "\\1\u00a0\\2", text)  # points (y, z)
     text = re.sub(r"(?<=[\d)]) (?=(N|kN|lbf|kip|MPa|kPa|psi|ksi|mm|m|in)\b)", "\u00a0", text)
     return re.sub(r"\u00a0(N|kN|lbf|kip) (mm|m|in)\b", "\u00a0\\1\u00a0\\2", text)
 

@@ -7,11 +7,14 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from xsec_fem.errors import MissingLibraryError
+from xsec_fem.fem.mesh import Mesh
+from xsec_fem.model.section import Section
 from xsec_fem.report.drawing_mesh import drawing_mesh
 from xsec_fem.report.sheet import DPI
+from xsec_fem.report.sketch_picture import sketch_figure
 from xsec_fem.report.stress_picture import QUANTITIES, Canvas, stress_figure
 from xsec_fem.report.wording import unique_slugs
-from xsec_fem.results import Result
+from xsec_fem.results import Properties, Result
 
 if TYPE_CHECKING:
     from matplotlib.figure import Figure
@@ -20,19 +23,31 @@ _SVG_SALT = "xsec_fem"  # the same picture gives the same file
 
 
 def write_pictures(result: Result, folder: Path, svg: bool = False) -> list[Path]:
-    """Write the contours of every case at 150 dpi into an existing folder, as .svg too when asked; return the files.
+    """Write sketch and contours of every case at 150 dpi into an existing folder, as .svg too when asked; return the files.
 
-    Names: tau_xz.png with one case, case_name_tau_xz.png with several. Raises MissingLibraryError without matplotlib.
+    Names: sketch.png; tau_xz.png with one case, case_name_tau_xz.png with several. Raises MissingLibraryError without matplotlib.
     """
     require_matplotlib()
     canvas = Canvas.of(drawing_mesh(result.fields.part_nodes, result.away_from_corners))
     prefixes = unique_slugs([case.name for case in result.cases]) if len(result.cases) > 1 else [""]
-    files: list[Path] = []
+    files = write_sketch(result.section, folder, svg, result.mesh, result.properties)
     for case, prefix in zip(result.cases, prefixes, strict=False):
         for quantity in QUANTITIES:
             name = f"{prefix}_{quantity.key}" if prefix else quantity.key
             files += save(stress_figure(result, case, quantity, canvas), folder / name, svg)
     return files
+
+
+def write_sketch(
+    section: Section, folder: Path, svg: bool = False, mesh: Mesh | None = None, properties: Properties | None = None
+) -> list[Path]:
+    """Write sketch.png (150 dpi), and .svg when asked, into an existing folder; return the files, none without parts to draw.
+
+    Raises MissingLibraryError without matplotlib.
+    """
+    require_matplotlib()
+    figure = sketch_figure(section, mesh, properties)
+    return [] if figure is None else save(figure, folder / "sketch", svg)
 
 
 def save(figure: Figure, stem: Path, svg: bool) -> list[Path]:

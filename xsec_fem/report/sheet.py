@@ -93,14 +93,18 @@ def make_plan(
     bar: bool = False,
     detail: bool = False,
     side: float = 0.0,
+    least_height: float = 0.0,
 ) -> Plan:
     """Return the plan of a page for a section with that box [mm]: title, then subtitles, as `headings`.
 
-    `padding` is the empty room at each side of the section, `side` that to the right of the drawing, for a legend [in].
+    `padding` is the empty room at each side of the section, `side` that to the right of the drawing, for a legend;
+    the drawing is at least `least_height` high [in].
     """
     scale = paper_scale(box, padding)
     sizes = [(box[2] - box[0]) * scale + 2 * padding[0], (box[3] - box[1]) * scale + 2 * padding[1]]
-    width, height = (max(size, least) for size, least in zip(sizes, _SMALLEST, strict=True))
+    width, height = (
+        max(size, least) for size, least in zip(sizes, (_SMALLEST[0], max(_SMALLEST[1], least_height)), strict=True)
+    )
     below = detail and width > _WIDE * height
     right = _BAR_GAP + _BAR + _BAR_TEXT if bar else 0.2
     if detail and not below:

@@ -59,7 +59,7 @@ class Canvas:
         """Make the triangulation (K, 3) of a mesh to draw."""
         from matplotlib.tri import Triangulation
 
-        return cls(mesh, Triangulation(*mesh.places.T, mesh.triangles))
+        return cls(mesh, Triangulation(mesh.places[:, 0], mesh.places[:, 1], mesh.triangles))
 
 
 def stress_figure(result: Result, case: CaseResult, quantity: Quantity, canvas: Canvas) -> Figure:
@@ -108,7 +108,8 @@ def _extremes(case: CaseResult, quantity: Quantity, mesh: DrawingMesh) -> list[M
     clear = clear if len(clear) else np.arange(len(values))
     ends = clear[[np.argmax(values[clear]), np.argmin(values[clear])]]
     names = case.stress.part_nodes.mesh.part_names
-    marks = [Mark(float(values[k]), *mesh.places[k].tolist(), names[mesh.part[k]]) for k in ends]
+    places = mesh.places[ends].tolist()
+    marks = [Mark(float(values[k]), y, z, names[mesh.part[k]]) for k, (y, z) in zip(ends, places, strict=True)]
     marks.sort(key=lambda mark: -abs(mark.value))
     return marks[: 2 if abs(marks[1].value) > _WORTH_MARKING * abs(marks[0].value) else 1]
 
@@ -243,7 +244,7 @@ def _colour_bar(sheet: Sheet, filled: object, scale: ColourScale, label: str) ->
     bar.ax.yaxis.set_major_formatter(FuncFormatter(lambda value, _: number(value, 4, reference)))
     bar.ax.tick_params(labelsize=NOTE, colors=INK, width=0.6, length=3)
     bar.set_label(label, size=SUBTITLE, color=INK)
-    bar.outline.set_linewidth(0.5)  # type: ignore[operator]
+    bar.outline.set_linewidth(0.5)
 
 
 def _height_of(sheet: Sheet) -> float:

@@ -1,0 +1,67 @@
+"""The legend beside a sketch: one entry a part, mark or load case, its text broken to fit."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+from xsec_fem.report.lettering import line_height, wrapped
+from xsec_fem.report.sheet import INK, NOTE, Sheet
+
+_INDENT = 0.4  # room for the sample before the text [in]
+_GAP = 0.05  # between entries [in]
+
+
+@dataclass(frozen=True)
+class Entry:
+    """One entry: kind "part", "line", "mark" or "text"; `sample` is a number, a line style or a marker."""
+
+    kind: str
+    text: str
+    sample: str = ""
+    colour: str = INK
+
+
+def legend_height(entries: Sequence[Entry], width: float) -> float:
+    """Return the height of the legend in inches when its column has that width."""
+    return sum(len(_lines(entry, width)) * line_height(NOTE) + _GAP for entry in entries)
+
+
+def draw_legend(sheet: Sheet, entries: Sequence[Entry], width: float) -> None:
+    """Write the legend to the right of the drawing, `width` inches wide, from its top down."""
+    left, bottom, across, height = sheet.plan.drawing
+    page = sheet.plan.size
+    axes = sheet.figure.add_axes(((left + across + 0.2) / page[0], bottom / page[1], width / page[0], height / page[1]))
+    axes.set_xlim(0, width)
+    axes.set_ylim(0, height)
+    axes.axis("off")
+    top = height
+    for entry in entries:
+        lines = _lines(entry, width)
+        middle = top - line_height(NOTE) / 2
+        if entry.kind == "part":
+            axes.text(
+                _INDENT / 2, middle, entry.sample, size=NOTE, ha="center", va="center", color=INK,
+                bbox={"boxstyle": "circle,pad=0.2", "facecolor": entry.colour, "edgecolor": INK, "linewidth": 0.6},
+            )  # fmt: skip
+        elif entry.kind == "line":
+            axes.plot([0.05, _INDENT - 0.08], [middle, middle], entry.sample, color=entry.colour, linewidth=1.8)
+        elif entry.kind == "mark":
+            face = "none" if entry.sample == "D" else entry.colour
+            axes.plot(
+                [_INDENT / 2],
+                [middle],
+                entry.sample,
+                color=entry.colour,
+                markerfacecolor=face,
+                markersize=6,
+                markeredgewidth=1.5,
+            )
+        for line in lines:
+            axes.text(_INDENT, top - line_height(NOTE) / 2, line, size=NOTE, va="center", color=INK, parse_math=False)
+            top -= line_height(NOTE)
+        top -= _GAP
+
+
+def _lines(entry: Entry, width: float) -> list[str]:
+    return wrapped(entry.text, NOTE, width - _INDENT) or [""]
