@@ -259,6 +259,20 @@ def star_polygon(radii: Sequence[float], rings: int, order: int, seed: int = 0) 
     return straight(points, np.array(triangles), order)
 
 
+def convex_polygon(corners: Sequence[Sequence[float]], n: int, order: int) -> Mesh:
+    """Triangles from the mean of the corners to each side, each divided evenly into n²."""
+    ring = np.asarray(corners, float)
+    centre = ring.mean(axis=0)
+    pieces = [triangle([centre, ring[k], ring[(k + 1) % len(ring)]], n, 1) for k in range(len(ring))]
+    points = np.vstack([piece.nodes for piece in pieces])
+    starts = np.cumsum([0, *(len(piece.nodes) for piece in pieces)])
+    triangles = np.vstack([piece.triangles + start for piece, start in zip(pieces, starts[:-1], strict=True)])
+    size = np.abs(points).max()
+    keys = np.floor(points / (1e-7 * size) + 0.37).astype(np.int64)
+    _, first, same = np.unique(keys, axis=0, return_index=True, return_inverse=True)
+    return straight(points[first], same.ravel()[triangles], order)
+
+
 def relabelled(mesh: Mesh, part_of: IntArray, names: Sequence[str]) -> Mesh:
     """The same triangles given to other parts."""
     return Mesh(mesh.nodes, mesh.triangles, np.asarray(part_of, np.int64), tuple(names))
