@@ -11,7 +11,7 @@ from pydantic import BaseModel, ValidationError
 from pydantic_core import ErrorDetails, PydanticCustomError
 
 from xsec_fem.errors import Fault, InputError
-from xsec_fem.model.wording import did_you_mean, listed, value_text, with_unit
+from xsec_fem.model.wording import did_you_mean, key_text, listed, value_text, with_unit
 from xsec_fem.units import UnitSystem
 
 TableT = TypeVar("TableT", bound=BaseModel)
@@ -116,7 +116,7 @@ def _joined(place: str, path: str) -> str:
 def _path(steps: list[int | str]) -> str:
     text = ""
     for step in steps:
-        text += f"[{step}]" if isinstance(step, int) else ("." if text else "") + step
+        text += f"[{step}]" if isinstance(step, int) else ("." if text else "") + key_text(step)
     return text
 
 

@@ -1,8 +1,9 @@
 """Parts as polygons for the geometric checks, and the one distance below which two points count as the same.
 
-Arcs become chords. A chord over the angle a leaves its arc of radius r by r(1 - cos(a/2)), at its middle; the angle is
-taken so that this is `CHORD` times the section's size, whatever the radius. Two arcs that touch along their length but
-are cut at other places therefore overlap (or part) by slivers no deeper than twice that: area <= depth x shared length.
+Arcs become chords. A chord over the angle a leaves its arc of radius r by r(1 - cos(a/2)) = 2 r sin²(a/4), at its
+middle; the angle is taken so that this is `CHORD` times the section's size, whatever the radius. Two arcs that touch
+along their length but are cut at other places therefore overlap (or part) by slivers no deeper than twice that:
+area <= depth x shared length.
 """
 
 from __future__ import annotations
@@ -85,6 +86,11 @@ def flat_loop(loop: Loop, scale: Scale) -> FloatArray:
     return np.array(points, dtype=np.float64)
 
 
+def loop_size(loop: Loop) -> float:
+    """Return the larger side of a loop's bounding box [mm], arcs cut coarsely."""
+    return float(np.ptp(loop.polyline(), axis=0).max())
+
+
 def polygons_in(geometry: BaseGeometry) -> list[Polygon]:
     """Return the polygons that a geometry is made of; lines and points in it are left out."""
     from shapely import Polygon
@@ -106,4 +112,4 @@ def _chord_degrees(segment: Segment, chord: float) -> float:
         return 180.0
     # an ellipse is a squeezed circle of its major half axis, and squeezing only brings chord and arc nearer
     radius = segment.radius if hasattr(segment, "radius") else math.hypot(*segment.major)
-    return 180.0 if radius <= chord else math.degrees(2 * math.acos(1 - chord / radius))
+    return 180.0 if radius <= chord else math.degrees(4 * math.asin(math.sqrt(chord / radius / 2)))

@@ -43,7 +43,7 @@ def check_geometry(
     _check_overlaps(parts, scale, faults)
     pieces = pieces_of(parts, scale)
     met = contacts(pieces, scale.same)
-    if len(parts) == len(placed):
+    if pieces and len(parts) == len(placed):
         _check_bodies(parts, pieces, met, faults)
         _check_probes(parts, probes, scale, faults)
     for place, joint in joints:

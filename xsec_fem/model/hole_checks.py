@@ -6,10 +6,10 @@ import re
 from typing import TYPE_CHECKING
 
 from xsec_fem.model.faults import FaultList
-from xsec_fem.model.flat_parts import FlatPart, Scale, flat_loop, flat_polygon, thick_pieces
+from xsec_fem.model.flat_parts import FlatPart, Scale, flat_loop, flat_polygon, loop_size, thick_pieces
 from xsec_fem.model.outline import Face
 from xsec_fem.model.part_reader import PlacedPart
-from xsec_fem.model.wording import number_text, point_text
+from xsec_fem.model.wording import point_text
 
 if TYPE_CHECKING:
     from shapely import Polygon
@@ -20,42 +20,55 @@ _REMEDY = "Holes are placed in the section's axes, not in those of the part; a n
 
 def checked_part(placed: PlacedPart, face: Face, scale: Scale, faults: FaultList) -> FlatPart | None:
     """Return the part as a polygon less those of its holes that can be cut; None when its outline crosses itself."""
-    import shapely
-
     outline = flat_polygon(face.outer, [], scale)
-    if not outline.is_valid:
-        at = re.search(r"\[(\S+) (\S+)\]", shapely.is_valid_reason(outline))
-        where = f" at {point_text((float(at[1]), float(at[2])), scale.size)}" if at else ""
-        faults.add(placed.place, f"has an outline that crosses or touches itself{where}", None, "Check its numbers.")
-        return None
-    if outline.area <= scale.same * outline.length / 2:
-        rule = f"is thinner than {number_text(float(f'{scale.same:.2g}'))} of a section of size {scale.size:.6g}"
-        faults.add(placed.place, rule, None, "Check its numbers and their units.")
+    if not _is_sound(outline, placed.place, scale, faults):
         return None
     sound = _sound_holes(placed, face, outline, scale, faults)
-    return FlatPart(placed, flat_polygon(face.outer, [face.holes[k] for k in sound], scale))
+    solid = flat_polygon(face.outer, [face.holes[k] for k in sound], scale)
+    return FlatPart(placed, solid) if _is_sound(solid, placed.place, scale, faults) else None
+
+
+def _is_sound(polygon: Polygon, place: str, scale: Scale, faults: FaultList) -> bool:
+    """False, and the fault noted, for a polygon without thickness, or one that crosses itself."""
+    import shapely
+
+    if polygon.area <= scale.same * polygon.length / 2:
+        rule = f"is thinner than {scale.same:.2g}, too thin for a section of size {scale.size:.6g}"
+        faults.add(place, rule, None, "Check the numbers and their units.")
+        return False
+    if not polygon.is_valid:
+        at = re.search(r"\[(\S+) (\S+)\]", shapely.is_valid_reason(polygon))
+        where = f" at {point_text((float(at[1]), float(at[2])), scale.size)}" if at else ""
+        faults.add(place, f"has an outline that crosses or touches itself{where}", None, "Check the numbers.")
+        return False
+    return True
 
 
 def _sound_holes(placed: PlacedPart, face: Face, outline: Polygon, scale: Scale, faults: FaultList) -> list[int]:
     import shapely
 
-    holes = [shapely.Polygon(flat_loop(loop, scale)) for loop in face.holes]
-    sound: list[int] = []
-    for k, hole in enumerate(holes):
+    holes: dict[int, Polygon] = {}
+    for k, loop in enumerate(face.holes):
         place = placed.hole_places[k]
+        if place and loop_size(loop) > loop_size(face.outer):  # not cut into chords: their number grows with its size
+            faults.add(place, "is larger than its part", None, _REMEDY)
+            continue
+        hole = shapely.Polygon(flat_loop(loop, scale))
         if not place:  # a hollow of the shape itself: its own rules have kept it inside
-            sound.append(k)
+            holes[k] = hole
+            continue
+        if not _is_sound(hole, place, scale, faults):
             continue
         rule = _edge_rule(hole, outline, scale)
         if rule:
             faults.add(place, rule, None, _REMEDY)
             continue
-        clashes = [(j, rule) for j in sound if (rule := _clash_rule(hole, holes[j], scale, faults))]
+        clashes = [(j, rule) for j, other in holes.items() if (rule := _clash_rule(hole, other, scale, faults))]
         for j, rule in clashes:
             faults.add(place, rule.format(other=_hole_name(placed, j)), None, "Merge the two into one outline.")
         if not clashes:
-            sound.append(k)
-    return sound
+            holes[k] = hole
+    return list(holes)
 
 
 def _hole_name(placed: PlacedPart, index: int) -> str:

@@ -7,7 +7,7 @@ from collections.abc import Mapping
 from xsec_fem.model.faults import FaultList
 from xsec_fem.model.schema import IsotropicTable, OrthotropicTable
 from xsec_fem.model.section import Material
-from xsec_fem.model.wording import listed, quoted
+from xsec_fem.model.wording import key_text, listed
 
 _ORTHOTROPIC_KEYS = ("Gxy", "Gxz", "nu_xy", "nu_xz")
 _ISOTROPIC_KEYS = ("G", "nu")
@@ -38,8 +38,7 @@ def material_names(table: object) -> list[str]:
 
 def material_place(name: str) -> str:
     """Return where a material stands in the file, 'materials.board' or 'materials."glue line"'."""
-    bare = name.isascii() and name.replace("-", "").replace("_", "").isalnum()
-    return f"materials.{name if bare else quoted(name)}"
+    return f"materials.{key_text(name)}"
 
 
 def _read_material(name: str, table: Mapping[str, object], faults: FaultList) -> Material | None:

@@ -75,6 +75,8 @@ def contacts(pieces: list[Piece], reach: float) -> dict[tuple[int, int], Contact
     import numpy as np
     from shapely import STRtree
 
+    if not pieces:
+        return {}
     tree = STRtree([piece.solid for piece in pieces])
     found = tree.query([piece.solid for piece in pieces], predicate="dwithin", distance=reach)
     pairs = sorted({(int(i), int(j)) for i, j in np.transpose(found) if i < j and pieces[i].part != pieces[j].part})

@@ -88,7 +88,7 @@ def _split(
     try:
         problems = spec.problems()
     except (ArithmeticError, ValueError):
-        faults.add(place, "has sizes too far apart to work with", None, "Check the numbers of the shape.")
+        faults.add(place, "has sizes too far apart to work with", None, "Check the numbers of the shape and of at.")
         return common, None
     for problem in problems:
         value = text_with_unit(problem.value, problem.key, faults.units)
@@ -111,10 +111,13 @@ def _placed_face(spec: ShapeSpec, where: PlacementTable, place: str, faults: Fau
     try:
         face = spec.face()
         move = placement(face, where.anchor or spec.default_anchor, where.at, where.rotate, where.mirror)
+        placed = face.moved(move)
+        for loop in placed.loops:  # far from the origin, the points of a small arc become one
+            loop.polyline()
     except (ArithmeticError, ValueError):
-        faults.add(place, "has sizes too far apart to work with", None, "Check the numbers of the shape.")
+        faults.add(place, "has sizes too far apart to work with", None, "Check the numbers of the shape and of at.")
         return None, Isometry()
-    return face.moved(move), move
+    return placed, move
 
 
 def _read_holes(tables: object, place: str, faults: FaultList) -> list[tuple[Loop, str]] | None:

@@ -19,7 +19,7 @@ from xsec_fem.model.request_reader import read_actions, read_cuts, read_joints, 
 from xsec_fem.model.schema import HeadTable, SolveTable
 from xsec_fem.model.section import Material, Part, Section, SolveSettings
 from xsec_fem.model.section_text import parse_tables, read_text
-from xsec_fem.model.wording import did_you_mean
+from xsec_fem.model.wording import did_you_mean, key_text
 from xsec_fem.units import UNIT_SYSTEMS, UnitSystem
 
 _LISTS = ("parts", "joints", "cuts", "probes", "actions")
@@ -89,7 +89,7 @@ def _read_head(tables: Mapping[str, object], faults: FaultList) -> tuple[str, Un
     faults.units = UNIT_SYSTEMS[head.units] if head else None
     for key in tables:
         if key not in _KEYS:
-            faults.add(str(key), "is not a key or table of a section file", None, did_you_mean(key, _KEYS))
+            faults.add(key_text(str(key)), "is not a key or table of a section file", None, did_you_mean(key, _KEYS))
     return (head.title, UNIT_SYSTEMS[head.units]) if head else ("", next(iter(UNIT_SYSTEMS.values())))
 
 

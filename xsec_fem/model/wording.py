@@ -49,7 +49,7 @@ def value_text(value: object) -> str:
     if isinstance(value, int | float):
         return number_text(value)
     if isinstance(value, str):
-        return _shortened(json.dumps(value, ensure_ascii=False))
+        return quoted(value)
     if isinstance(value, datetime | date | time):
         return value.isoformat()
     if isinstance(value, list | tuple):
@@ -91,7 +91,13 @@ def did_you_mean(word: object, known: Iterable[str]) -> str:
 
 def quoted(name: str) -> str:
     """Return a name in double quotes, control characters escaped, cut when very long."""
-    return _shortened(json.dumps(name, ensure_ascii=False))
+    text = json.dumps(name, ensure_ascii=False)
+    return _shortened("".join(c if c.isprintable() else c.encode("unicode_escape").decode() for c in text))
+
+
+def key_text(key: str) -> str:
+    """Return a key as TOML writes it: bare when it can be, else in quotes."""
+    return key if re.fullmatch(r"[A-Za-z0-9_-]+", key) else quoted(key)
 
 
 def listed(names: Iterable[str]) -> str:
