@@ -59,5 +59,6 @@ def random_sections(draw: st.DrawFn) -> RandomSection:
         return draw(st.floats(low, high)), draw(st.floats(low, high))
 
     G = (pair(0.2, 4.0), pair(0.2, 4.0))
-    nu = (pair(0.0, 0.5), pair(0.0, 0.5))
+    ratio = st.just(0.0) | st.floats(0.01, 0.5)
+    nu = ((draw(ratio), draw(ratio)), (draw(ratio), draw(ratio)))
     return RandomSection(mesh, pair(0.5, 10.0), G, nu, (draw(st.floats(0, 180)), draw(st.floats(0, 180))))
