@@ -66,6 +66,42 @@ class Properties:
 
 
 @dataclass(frozen=True)
+class Certificate:
+    """Guaranteed intervals (lowest, highest) of the constants, in the units and axes of `Properties`.
+
+    `energy_error` holds, for unit Vy, Vz and T, the largest possible relative error of the stress field in energy [-];
+    `coupling` is that of shear_flexibility's mixed entry. `strict` is True when nothing but round-off stands between the section
+    and the bounds; `reason` says why not.
+    """
+
+    energy_error: Mapping[str, float]
+    IT: tuple[float, float]
+    Asy: tuple[float, float]
+    Asz: tuple[float, float]
+    coupling: tuple[float, float]
+    ysc_trefftz: tuple[float, float]
+    zsc_trefftz: tuple[float, float]
+    ysc: tuple[float, float]
+    zsc: tuple[float, float]
+    strict: bool
+    reason: str
+
+
+@dataclass(frozen=True)
+class MeshStep:
+    """One mesh of the adaptive sequence: nodes, triangles and the bounds of the energy errors of Vy, Vz and T [-]."""
+
+    nodes: int
+    elements: int
+    energy_errors: Mapping[str, float]
+
+    @property
+    def energy_error(self) -> float:
+        """The largest of the three [-]."""
+        return max(self.energy_errors.values())
+
+
+@dataclass(frozen=True)
 class Contact:
     """Two parts that touch along `length` [mm]; `joint` names the declared joint, None when they are simply one solid."""
 
@@ -163,6 +199,8 @@ class Result:
     cases : one entry a load case.
     contacts, corners, checks, warnings : what touches, where stress has no limit, trust, cautions.
     fields : nodal fields of unit actions.
+    certificate : guaranteed intervals, None when not asked for.
+    mesh_steps : the meshes solved on the way to the accuracy asked for, the last one being `mesh`.
     versions : of this package and the libraries used.
     timings : seconds by stage.
     """
@@ -176,6 +214,8 @@ class Result:
     checks: tuple[Check, ...]
     warnings: tuple[Caution, ...]
     fields: UnitFields
+    certificate: Certificate | None = None
+    mesh_steps: tuple[MeshStep, ...] = ()
     versions: Mapping[str, str] = field(default_factory=dict)
     timings: Mapping[str, float] = field(default_factory=dict)
 
@@ -222,9 +262,10 @@ class Result:
             },
             "mesh": {
                 "order": self.mesh.order, "nodes": len(self.mesh.nodes), "elements": len(self.mesh.triangles),
-                "source": self.mesh.source, "adapt_steps": 0,
+                "source": self.mesh.source, "adapt_steps": max(len(self.mesh_steps) - 1, 0),
             },
             "properties": asdict(self.properties),
+            **({} if self.certificate is None else {"certificate": asdict(self.certificate)}),
             "contacts": [asdict(contact) for contact in self.contacts],
             "corners": [_corner_dict(corner) for corner in self.corners],
             "cases": [_case_dict(case) for case in self.cases],

@@ -8,14 +8,12 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
-from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Section
+from xsec_fem.pipeline.solution import Solution
 from xsec_fem.recovery.corners import Corner, corner_mask
 from xsec_fem.recovery.section_forces import reduce_actions
 from xsec_fem.recovery.stress_field import UnitFields
 from xsec_fem.results import CaseResult, Caution, Properties
-from xsec_fem.theory.field_integrals import FieldIntegrals
-from xsec_fem.theory.moduli import Moduli
 
 # share of the Poisson part in the shear energy above which it is worth a sentence: 5 % of energy is about 20 % of stress
 _POISSON_SHARE = 0.05
@@ -33,21 +31,40 @@ class Evidence:
     """What the cautions are drawn from."""
 
     section: Section
-    mesh: Mesh
-    moduli: Moduli
+    solution: Solution
     properties: Properties
-    corners: Sequence[Corner]
     cases: Sequence[CaseResult]
     fields: UnitFields
-    integrals: FieldIntegrals
+
+    @property
+    def corners(self) -> Sequence[Corner]:
+        """The singular corners."""
+        return self.solution.corners
+
+    @property
+    def size(self) -> float:
+        """Longer side of the section's bounding box [mm]."""
+        return float(np.ptp(self.solution.mesh.nodes, axis=0).max())
 
 
 def cautions(evidence: Evidence) -> tuple[Caution, ...]:
     """Return all cautions, the reader's first; numbers in the file's units (mm, N, MPa)."""
     found = [Caution(code, message) for code, message in evidence.section.cautions]
-    for source in (_load_points, _corners, _unequal_nu, _poisson, _restrained_warping, _slender_walls):
+    for source in (_accuracy, _load_points, _corners, _unequal_nu, _poisson, _restrained_warping, _slender_walls):
         found += source(evidence)
     return tuple(found)
+
+
+def _accuracy(evidence: Evidence) -> Iterator[Caution]:
+    wanted, solution = evidence.section.solve.accuracy, evidence.solution
+    if solution.bounds is not None and solution.energy_error > wanted:
+        drawn = all(part.face is not None for part in evidence.section.parts)
+        why = f"the mesh already has {len(solution.mesh.nodes)} nodes" if drawn else "a mesh from a file is not refined"
+        yield Caution(
+            "accuracy",
+            f"The guaranteed energy error is {solution.energy_error:.2g}, above the {wanted:g} asked for: {why}. The intervals "
+            "printed beside the constants hold all the same.",
+        )
 
 
 def _load_points(evidence: Evidence) -> Iterator[Caution]:
@@ -59,7 +76,7 @@ def _load_points(evidence: Evidence) -> Iterator[Caution]:
         field = evidence.fields.combine(forces)
         clear = corner_mask(field.part_nodes.positions, evidence.corners)
         other = float(field.tau[clear].max()) if clear.any() else float(field.tau.max())
-        size = math.hypot(*np.ptp(evidence.mesh.nodes, axis=0))
+        size = evidence.size
         if abs(forces.T - case.forces.T) <= 1e-6 * size * (abs(forces.Vy) + abs(forces.Vz)):
             continue  # the two centres coincide
         yield Caution(
@@ -86,7 +103,7 @@ def _corners(evidence: Evidence) -> Iterator[Caution]:
 
 
 def _unequal_nu(evidence: Evidence) -> Iterator[Caution]:
-    if not evidence.moduli.equal_nu:
+    if not evidence.solution.warping.problem.moduli.equal_nu:
         yield Caution(
             "unequal nu",
             "The parts have different Poisson's ratios: the in-plane stresses that this causes where they meet are neglected. "
@@ -97,7 +114,9 @@ def _unequal_nu(evidence: Evidence) -> Iterator[Caution]:
 def _poisson(evidence: Evidence) -> Iterator[Caution]:
     for index, name in ((1, "Vy"), (2, "Vz")):
         used = any(getattr(case.actions, name) for case in evidence.cases)
-        share = evidence.integrals.energy[index + 2, index + 2] / evidence.integrals.energy[index, index]
+        share = (
+            evidence.solution.integrals.energy[index + 2, index + 2] / evidence.solution.integrals.energy[index, index]
+        )
         if used and share > _POISSON_SHARE:
             yield Caution(
                 "Poisson effect",
@@ -109,7 +128,7 @@ def _poisson(evidence: Evidence) -> Iterator[Caution]:
 
 def _restrained_warping(evidence: Evidence) -> Iterator[Caution]:
     properties = evidence.properties
-    size = float(np.ptp(evidence.mesh.nodes, axis=0).max())
+    size = evidence.size
     reach = math.sqrt(properties.EIw / properties.GIT)
     twisted = [case.name for case in evidence.cases if abs(case.T_total) > _TWIST * size * _shear_of(case)]
     if twisted and reach > _WARPING_REACH * size:

@@ -9,11 +9,11 @@ import numpy as np
 from xsec_fem.fem.edge_integrals import edge_nodes, edge_weights
 from xsec_fem.fem.edges import Edges
 from xsec_fem.fem.linear_solve import LOAD_SUM_LIMIT, RESIDUAL_LIMIT
+from xsec_fem.pipeline.solution import Solution
 from xsec_fem.recovery.corners import Corner, corner_mask
 from xsec_fem.recovery.stress_field import UnitFields
 from xsec_fem.results import Check
-from xsec_fem.theory.field_integrals import FieldIntegrals
-from xsec_fem.theory.warping import POISSON, SHEAR, TORSION, Warping
+from xsec_fem.theory.warping import POISSON, SHEAR, TORSION
 
 # Identities of the discrete equations: they hold to round-off on any mesh. 1e-8 leaves room for the condition number of
 # very thin sections (thickness/size = 1e-4 loses about four digits) and still catches any wrong term.
@@ -24,10 +24,10 @@ IDENTITY_LIMIT = 1e-8
 FREE_EDGE_LIMIT = 0.1
 
 
-def checks(
-    warping: Warping, integrals: FieldIntegrals, fields: UnitFields, edges: Edges, corners: Sequence[Corner]
-) -> tuple[Check, ...]:
+def checks(solution: Solution, fields: UnitFields) -> tuple[Check, ...]:
     """Return the checks of one solve, all dimensionless."""
+    warping, integrals = solution.warping, solution.integrals
+    free_edge = free_edge_ratio(fields, solution.edges, solution.corners)
     force = integrals.resultant[SHEAR] + integrals.resultant[POISSON]
     GIT = integrals.energy[TORSION, TORSION]
     coupling = integrals.energy[SHEAR, TORSION] + integrals.energy[POISSON, TORSION]
@@ -42,7 +42,26 @@ def checks(
         Check(
             "shear-torsion coupling by two routes", float((np.abs(coupling - expected) / size).max()), IDENTITY_LIMIT
         ),
-        Check("free edge (shear across over shear along)", free_edge_ratio(fields, edges, corners), FREE_EDGE_LIMIT),
+        *_proof_checks(solution),
+        Check("free edge (shear across over shear along)", free_edge, FREE_EDGE_LIMIT),
+    )
+
+
+def _proof_checks(solution: Solution) -> tuple[Check, ...]:
+    """The identity that the bounds rest on, and the constants inside their own intervals."""
+    if solution.bounds is None:
+        return ()
+    proof, stiffness = solution.bounds.certificate, solution.stiffness
+    flexibility = stiffness.shear_flexibility
+    pairs = (
+        (stiffness.GIT, proof.GIT),
+        (1 / flexibility[0, 0], proof.GAsy),
+        (1 / flexibility[1, 1], proof.GAsz),
+    )
+    outside = max(max(low - value, value - high, 0.0) / value for value, (low, high) in pairs)
+    return (
+        Check("Prager-Synge identity of both solutions", solution.bounds.identity_defect, IDENTITY_LIMIT),
+        Check("bounds bracket IT, Asy, Asz (share outside)", float(outside), IDENTITY_LIMIT),
     )
 
 

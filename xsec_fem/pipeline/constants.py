@@ -2,27 +2,12 @@
 
 from __future__ import annotations
 
-import numpy as np
-
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Material, Section
-from xsec_fem.results import Properties
+from xsec_fem.pipeline.solution import Solution
+from xsec_fem.results import Certificate, Properties
 from xsec_fem.theory.area_properties import AreaProperties
-from xsec_fem.theory.moduli import Moduli, rotated_tensor
-from xsec_fem.theory.stiffness import ShearStiffness, section_stiffness
-
-
-def moduli_of(section: Section, mesh: Mesh) -> Moduli:
-    """Return E, G and nu per part of the mesh, (P,), (P, 2, 2) and (P, 2, 2) [MPa, -]; nu = 0 when [solve] says so."""
-    by_name = {part.name: part for part in section.parts}
-    parts = [by_name[name] for name in mesh.part_names]
-    materials = [section.materials[part.material] for part in parts]
-    moduli = Moduli(
-        np.array([material.E for material in materials]),
-        np.array([rotated_tensor(m.Gxy, m.Gxz, p.grain_angle) for m, p in zip(materials, parts, strict=True)]),
-        np.array([rotated_tensor(m.nu_xy, m.nu_xz, p.grain_angle) for m, p in zip(materials, parts, strict=True)]),
-    )
-    return moduli if section.solve.nu_effect else moduli.without_nu()
+from xsec_fem.theory.stiffness import section_stiffness
 
 
 def reference_material(section: Section, mesh: Mesh, area: AreaProperties) -> Material:
@@ -35,12 +20,16 @@ def reference_material(section: Section, mesh: Mesh, area: AreaProperties) -> Ma
     return section.materials[max(share, key=lambda name: share[name])]
 
 
-def section_properties(
-    section: Section, mesh: Mesh, moduli: Moduli, area: AreaProperties, stiffness: ShearStiffness
-) -> Properties:
-    """Return the constants over the reference material, in the file's axes [mm, N, MPa]; G_ref = (Gxy + Gxz)/2 if they differ."""
-    material = reference_material(section, mesh, area)
-    E, G = material.E, (material.Gxy + material.Gxz) / 2
+def _reference_moduli(section: Section, solution: Solution) -> tuple[str, float, float]:
+    """Name, E and G = (Gxy + Gxz)/2 of the reference material [MPa]."""
+    material = reference_material(section, solution.mesh, solution.warping.problem.area)
+    return material.name, material.E, (material.Gxy + material.Gxz) / 2
+
+
+def section_properties(section: Section, solution: Solution) -> Properties:
+    """Return the constants over the reference material, in the file's axes [mm, N, MPa]; G_ref = (Gxy + Gxz)/2."""
+    name, E, G = _reference_moduli(section, solution)
+    area, stiffness = solution.warping.problem.area, solution.stiffness
     alpha, EIu, EIv = area.principal
     yc, zc = (float(value) for value in area.centroid)
     flexibility = stiffness.shear_flexibility
@@ -54,5 +43,26 @@ def section_properties(
         shear_flexibility=tuple(tuple(row) for row in flexibility.tolist()),
         EA=area.EA, EIyy=area.EIyy, EIzz=area.EIzz, EIyz=area.EIyz, GIT=stiffness.GIT, EIw=stiffness.EIw,
         stiffness=tuple(tuple(row) for row in section_stiffness(area, stiffness).tolist()),
-        reference_material=material.name,
+        reference_material=name,
+    )  # fmt: skip
+
+
+def certificate_over_reference(section: Section, solution: Solution) -> Certificate | None:
+    """Return the guaranteed intervals of the constants as `section_properties` gives them [mm, mm², mm⁴]; None without bounds."""
+    if solution.bounds is None:
+        return None
+    _, _, G = _reference_moduli(section, solution)
+    proof = solution.bounds.certificate
+    yc, zc = (float(value) for value in solution.warping.problem.area.centroid)
+
+    def over(interval: tuple[float, float]) -> tuple[float, float]:
+        return interval[0] / G, interval[1] / G
+
+    def at(interval: tuple[float, float], centroid: float) -> tuple[float, float]:
+        return interval[0] + centroid, interval[1] + centroid
+
+    return Certificate(
+        dict(proof.energy_error), over(proof.GIT), over(proof.GAsy), over(proof.GAsz), proof.coupling,
+        at(proof.ysc_trefftz, yc), at(proof.zsc_trefftz, zc), at(proof.ysc, yc), at(proof.zsc, zc),
+        proof.strict, proof.reason,
     )  # fmt: skip

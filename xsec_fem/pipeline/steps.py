@@ -1,7 +1,10 @@
 """From a section to its result, in numbered steps: the only place that knows the order.
 
-read_section -> 1 mesh -> 2 constants of the parts -> 3 area properties -> 4 matrix and factor -> 5 warping problems
--> 6 constants of the section -> 7 nodal fields -> 8 corners and contacts -> 9 load cases -> 10 checks and cautions -> Result
+    read_section -> 1 mesh -> 2 constants of the parts -> 3 area properties -> 4 matrix and factor -> 5 warping problems
+    -> 6 constants of the section -> 7 bounds; back to 1 with finer sizes until they are narrow enough
+    -> 8 nodal fields -> 9 contacts and joints -> 10 load cases -> 11 checks and cautions -> Result
+
+Steps 2 to 7 are in `solution.py`, the way back in `adaptive.py`.
 """
 
 from __future__ import annotations
@@ -9,33 +12,31 @@ from __future__ import annotations
 import platform
 from importlib.metadata import PackageNotFoundError, version
 
-from xsec_fem.fem.edges import mesh_edges
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.front import make_mesh
 from xsec_fem.model.section import Section
-from xsec_fem.pipeline.bodies import named_contacts, require_one_body
+from xsec_fem.pipeline.adaptive import Progress, mesh_step, solve_adaptively
+from xsec_fem.pipeline.bodies import named_contacts
 from xsec_fem.pipeline.cautions import Evidence, cautions
 from xsec_fem.pipeline.checks import checks
-from xsec_fem.pipeline.constants import moduli_of, section_properties
+from xsec_fem.pipeline.constants import certificate_over_reference, section_properties
 from xsec_fem.pipeline.load_cases import solve_case
+from xsec_fem.pipeline.solution import Solution, solve_mesh
 from xsec_fem.pipeline.stopwatch import Stopwatch
-from xsec_fem.recovery.corners import find_corners
 from xsec_fem.recovery.joints import joint_flows
 from xsec_fem.recovery.largest import corner_rings
 from xsec_fem.recovery.stress_field import unit_fields
-from xsec_fem.results import Result
-from xsec_fem.theory.area_properties import area_properties
-from xsec_fem.theory.field_integrals import field_integrals
-from xsec_fem.theory.stiffness import shear_stiffness
-from xsec_fem.theory.warping import WarpingProblem, factorise_warping, solve_warping
+from xsec_fem.results import MeshStep, Result
 
 LIBRARIES = ("xsec-fem", "numpy", "scipy", "gmsh")
 
 
-def solve(section: Section) -> Result:
-    """Mesh and solve a section and recover the stresses of all its load cases.
+def solve(section: Section, certificate: bool = True, progress: Progress | None = None) -> Result:
+    """Mesh and solve a section, to the accuracy asked for in [solve], and recover the stresses of all its load cases.
 
-    Returns a Result; its arrays have one row a node and part, shape (S, ...), in the section's units (N, mm, MPa).
+    Without `certificate` the first mesh is solved as it is and no bounds are computed. `progress` is called with a
+    MeshStep after every mesh. Returns a Result; its arrays have one row a node and part, shape (S, ...), in the section's
+    units (N, mm, MPa).
 
     Raises
     ------
@@ -45,41 +46,39 @@ def solve(section: Section) -> Result:
         When a step fails; the message says where.
     """
     watch = Stopwatch()
-    with watch.stage("mesh"):  # 1
+    if certificate:
+        solution, steps = solve_adaptively(section, watch, progress)
+        return recover(section, solution, steps, watch)
+    with watch.stage("mesh"):
         mesh = make_mesh(section)
-    return solve_on_mesh(section, mesh, watch)
+    return recover(section, solve_mesh(section, mesh, watch, certificate=False), (), watch)
 
 
-def solve_on_mesh(section: Section, mesh: Mesh, watch: Stopwatch | None = None) -> Result:
+def solve_on_mesh(section: Section, mesh: Mesh, certificate: bool = True) -> Result:
     """Solve a section on a given mesh whose part names are the section's; raises as `solve` does (N, mm, MPa)."""
-    watch = watch or Stopwatch()
-    with watch.stage("assemble"):
-        edges = mesh_edges(mesh)
-        require_one_body(section, mesh, edges)
-        moduli = moduli_of(section, mesh)  # 2
-        area = area_properties(mesh, moduli)  # 3
-        problem = WarpingProblem(mesh, moduli, area)
-    with watch.stage("factorise"):  # 4
-        factor = factorise_warping(problem)
-    with watch.stage("solve"):  # 5
-        warping = solve_warping(problem, factor)
+    watch = Stopwatch()
+    solution = solve_mesh(section, mesh, watch, certificate)
+    return recover(section, solution, (mesh_step(solution),) if certificate else (), watch)
+
+
+def recover(section: Section, solution: Solution, steps: tuple[MeshStep, ...], watch: Stopwatch) -> Result:
+    """Steps 8 to 11: from a solved mesh to stresses, joints, cases and cautions (N, mm, MPa); InputError for a probe outside."""
+    mesh, edges, warping, corners = solution.mesh, solution.edges, solution.warping, solution.corners
     with watch.stage("recover"):
-        integrals = field_integrals(warping)  # 6
-        stiffness = shear_stiffness(area, integrals)
-        properties = section_properties(section, mesh, moduli, area, stiffness)
-        fields = unit_fields(warping, stiffness)  # 7
-        corners = find_corners(mesh, edges, moduli.G)  # 8
-        contacts = named_contacts(section, mesh, edges)
-        flows = [joint_flows(warping, stiffness, fields, edges, joint) for joint in section.joints]
+        properties = section_properties(section, solution)
+        fields = unit_fields(warping, solution.stiffness)  # 8
+        contacts = named_contacts(section, mesh, edges)  # 9
+        flows = [joint_flows(warping, solution.stiffness, fields, edges, joint) for joint in section.joints]
         rings = corner_rings(mesh, corners)
-        cases = tuple(
+        cases = tuple(  # 10
             solve_case(section, actions, fields, properties, corners, rings, flows) for actions in section.actions
         )
-    return Result(  # 10
+        evidence = Evidence(section, solution, properties, cases, fields)
+    return Result(  # 11
         section, mesh, properties, cases, contacts, corners,
-        checks=checks(warping, integrals, fields, edges, corners),
-        warnings=cautions(Evidence(section, mesh, moduli, properties, corners, cases, fields, integrals)),
-        fields=fields, versions=library_versions(), timings=dict(watch.seconds),
+        checks=checks(solution, fields), warnings=cautions(evidence), fields=fields,
+        certificate=certificate_over_reference(section, solution), mesh_steps=steps,
+        versions=library_versions(), timings=dict(watch.seconds),
     )  # fmt: skip
 
 
