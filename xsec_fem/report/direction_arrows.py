@@ -2,13 +2,17 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 import numpy as np
 import numpy.typing as npt
 
+from xsec_fem.fem.locate import reference_coordinates
 from xsec_fem.recovery.stress_field import StressField
 from xsec_fem.report.sheet import Box
 
 FloatArray = npt.NDArray[np.float64]
+IntArray = npt.NDArray[np.int64]
 
 _FAINT = 0.02  # no arrow where the stress is below this share of the largest: its direction is of no interest
 _CLOSEST = 0.7  # arrows nearer to each other than this share of the spacing are dropped
@@ -21,33 +25,53 @@ def direction_arrows(stress: StressField, box: Box, spacing: float) -> tuple[Flo
 
     One arrow a square cell: in its middle when that is full of material, else next to the middle of the material in it.
     """
-    places, tau, weights = _dense_points(stress, box, spacing / 5)
-    inside = (places >= box[:2]).all(axis=1) & (places <= box[2:]).all(axis=1)
-    places, tau, weights = places[inside], tau[inside], weights[inside]
-    if not len(places):
+    dense = _dense_points(stress, box, spacing / 5)
+    if not len(dense.places):
         return np.zeros((0, 2)), np.zeros((0, 2))
     origin = np.array([box[0] + box[2], box[1] + box[3]]) / 2
-    cells, cell = np.unique(np.rint((places - origin) / spacing), axis=0, return_inverse=True)
+    cells, cell = np.unique(np.rint((dense.places - origin) / spacing), axis=0, return_inverse=True)
     cell = cell.ravel()
-    share = np.bincount(cell, weights) / spacing**2
-    mean = np.column_stack([np.bincount(cell, weights * x) for x in places.T]) / (share * spacing**2)[:, None]
-    off = np.hypot(*(places - mean[cell]).T)
-    order = np.lexsort((off, cell))
+    area = np.bincount(cell, dense.weights)
+    full = area >= _FULL * spacing**2
+    target = np.column_stack([np.bincount(cell, dense.weights * x) for x in dense.places.T]) / area[:, None]
+    target[full] = origin + cells[full] * spacing
+    order = np.lexsort((np.hypot(*(dense.places - target[cell]).T), cell))
     chosen = order[np.r_[True, np.diff(cell[order]) != 0]]
-    at, along = places[chosen], tau[chosen]
-    for k in np.flatnonzero(share >= _FULL):
-        middle = origin + cells[k] * spacing
-        found = stress.at(*middle.tolist()) if (np.abs(middle - at[k]) < spacing).all() else ()
-        if found:
-            at[k], along[k] = middle, (found[0].tau_xy, found[0].tau_xz)
+    at, along = _moved(stress, dense, chosen, target, full)
     size = np.hypot(*along.T)
-    kept = _thinned(at, np.minimum(share, 1.0), _CLOSEST * spacing)
+    kept = _thinned(at, np.minimum(area, spacing**2), _CLOSEST * spacing)
     kept = kept[size[kept] > _FAINT * stress.tau.max()]
     return at[kept], along[kept] / size[kept, None]
 
 
-def _dense_points(stress: StressField, box: Box, wanted: float) -> tuple[FloatArray, FloatArray, FloatArray]:
-    """Points inside the triangles that reach into the box, at most about `wanted` [mm] apart: places, tau and area of each."""
+@dataclass(frozen=True)
+class _Dense:
+    """Points inside triangles: places (K, 2), tau (K, 2), the area each stands for (K,) and its triangle (K,)."""
+
+    places: FloatArray
+    tau: FloatArray
+    weights: FloatArray
+    element: IntArray
+
+
+def _moved(
+    stress: StressField, dense: _Dense, chosen: IntArray, target: FloatArray, full: npt.NDArray[np.bool_]
+) -> tuple[FloatArray, FloatArray]:
+    """Places and tau of the chosen points, moved to their targets where these lie in the same triangle, full cells only."""
+    mesh = stress.part_nodes.mesh
+    at, along, element = dense.places[chosen], dense.tau[chosen], dense.element[chosen]
+    local = reference_coordinates(mesh, element, target)
+    with np.errstate(invalid="ignore"):
+        inside = full & (local.min(axis=1) >= 0) & (local.sum(axis=1) <= 1)
+    table = mesh.element.values(local[inside])
+    nodes = element[inside]
+    at[inside] = np.einsum("kn,knd->kd", table, mesh.nodes[mesh.triangles[nodes]])
+    along[inside] = np.einsum("kn,knd->kd", table, stress.tau_components[stress.part_nodes.triangles[nodes]])
+    return at, along
+
+
+def _dense_points(stress: StressField, box: Box, wanted: float) -> _Dense:
+    """Points in the box inside the triangles, at most about `wanted` [mm] apart."""
     numbering = stress.part_nodes
     mesh = numbering.mesh
     low, high = mesh.boxes
@@ -56,15 +80,17 @@ def _dense_points(stress: StressField, box: Box, wanted: float) -> tuple[FloatAr
     side1, side2 = corner[:, 1] - corner[:, 0], corner[:, 2] - corner[:, 0]
     area = (side1[:, 0] * side2[:, 1] - side1[:, 1] * side2[:, 0]) / 2
     divisions = np.clip(np.ceil((high[near] - low[near]).max(axis=1) / wanted), 3, _FINEST).astype(int)
-    points, values, weights = [np.zeros((0, 2))], [np.zeros((0, 2))], [np.zeros(0)]
+    found = [(np.zeros((0, 2)), np.zeros((0, 2)), np.zeros(0), np.zeros(0, np.int64))]
     for count in np.unique(divisions):
-        mine = divisions == count
+        mine = near[divisions == count]
         local = _inner_points(int(count))
         table = mesh.element.values(local)
-        points.append((table @ mesh.nodes[mesh.triangles[near[mine]]]).reshape(-1, 2))
-        values.append((table @ stress.tau_components[numbering.triangles[near[mine]]]).reshape(-1, 2))
-        weights.append(np.repeat(area[mine] / len(local), len(local)))
-    return np.concatenate(points), np.concatenate(values), np.concatenate(weights)
+        places = (table @ mesh.nodes[mesh.triangles[mine]]).reshape(-1, 2)
+        tau = (table @ stress.tau_components[numbering.triangles[mine]]).reshape(-1, 2)
+        weights = np.repeat(area[divisions == count] / len(local), len(local))
+        inside = (places >= box[:2]).all(axis=1) & (places <= box[2:]).all(axis=1)
+        found.append((places[inside], tau[inside], weights[inside], np.repeat(mine, len(local))[inside]))
+    return _Dense(*(np.concatenate(arrays) for arrays in zip(*found, strict=True)))
 
 
 def _inner_points(count: int) -> FloatArray:
@@ -76,7 +102,7 @@ def _inner_points(count: int) -> FloatArray:
     return np.asarray((corner + third[:, None]) / count)
 
 
-def _thinned(places: FloatArray, rank: FloatArray, least: float) -> npt.NDArray[np.int64]:
+def _thinned(places: FloatArray, rank: FloatArray, least: float) -> IntArray:
     """Numbers of the places to keep: high rank first, none nearer than `least` [mm] to one kept."""
     kept: list[int] = []
     for k in np.argsort(-rank, kind="stable").tolist():

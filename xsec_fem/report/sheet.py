@@ -176,7 +176,7 @@ def _set_view(axes: Axes, box: Box, length_unit: str) -> None:
     place, page = axes.get_position(), axes.figure.get_size_inches()  # type: ignore[union-attr]
     inches = (place.width * page[0], place.height * page[1])
     for axis, room, name in zip((axes.xaxis, axes.yaxis), inches, "yz", strict=True):
-        axis.set_major_locator(MaxNLocator(max(2, min(10, int(room / 0.65))), steps=[1, 2, 2.5, 5, 10]))
+        axis.set_major_locator(MaxNLocator(max(2, min(7, int(room / 0.75))), steps=[1, 2, 2.5, 5, 10]))
         axis.set_label_text(f"{name} [{length_unit}]", size=SUBTITLE)
     span = min(box[2] - box[0], box[3] - box[1])
     decimals = max(0, int(np.ceil(1.5 - np.log10(span))))

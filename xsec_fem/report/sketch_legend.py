@@ -29,36 +29,35 @@ def legend_height(entries: Sequence[Entry], width: float) -> float:
 
 def draw_legend(sheet: Sheet, entries: Sequence[Entry], width: float) -> None:
     """Write the legend to the right of the drawing, `width` inches wide, from its top down."""
+    from matplotlib.lines import Line2D
+
     left, bottom, across, height = sheet.plan.drawing
-    page = sheet.plan.size
-    axes = sheet.figure.add_axes(((left + across + 0.2) / page[0], bottom / page[1], width / page[0], height / page[1]))
-    axes.set_xlim(0, width)
-    axes.set_ylim(0, height)
-    axes.axis("off")
-    top = height
+    page, figure = sheet.plan.size, sheet.figure
+    left, top = left + across + 0.2, bottom + height
     for entry in entries:
         lines = _lines(entry, width)
-        middle = top - line_height(NOTE) / 2
+        middle = (top - line_height(NOTE) / 2) / page[1]
         if entry.kind == "part":
-            axes.text(
-                _INDENT / 2, middle, entry.sample, size=NOTE, ha="center", va="center", color=INK,
+            figure.text(
+                (left + _INDENT / 2) / page[0], middle, entry.sample, size=NOTE, ha="center", va="center", color=INK,
                 bbox={"boxstyle": "circle,pad=0.2", "facecolor": entry.colour, "edgecolor": INK, "linewidth": 0.6},
             )  # fmt: skip
         elif entry.kind == "line":
-            axes.plot([0.05, _INDENT - 0.08], [middle, middle], entry.sample, color=entry.colour, linewidth=1.8)
+            ends = [(left + 0.05) / page[0], (left + _INDENT - 0.08) / page[0]]
+            figure.add_artist(Line2D(ends, [middle, middle], linestyle=entry.sample, color=entry.colour, linewidth=1.8))
         elif entry.kind == "mark":
             face = "none" if entry.sample == "D" else entry.colour
-            axes.plot(
-                [_INDENT / 2],
-                [middle],
-                entry.sample,
-                color=entry.colour,
-                markerfacecolor=face,
-                markersize=6,
-                markeredgewidth=1.5,
-            )
+            figure.add_artist(
+                Line2D(
+                    [(left + _INDENT / 2) / page[0]], [middle], marker=entry.sample, color=entry.colour,
+                    markerfacecolor=face, markersize=6, markeredgewidth=1.5,
+                )
+            )  # fmt: skip
         for line in lines:
-            axes.text(_INDENT, top - line_height(NOTE) / 2, line, size=NOTE, va="center", color=INK, parse_math=False)
+            height_on_page = (top - line_height(NOTE) / 2) / page[1]
+            figure.text(
+                (left + _INDENT) / page[0], height_on_page, line, size=NOTE, va="center", color=INK, parse_math=False
+            )
             top -= line_height(NOTE)
         top -= _GAP
 

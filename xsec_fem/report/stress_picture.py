@@ -197,16 +197,10 @@ class _Fill:
             triangulation, self.values, levels=scale.levels, cmap=scale.colours, norm=Normalize(*scale.limits),
             extend=scale.extend,
         )  # fmt: skip
-        filled.set_edgecolor("face")  # closes the hairlines that anti-aliasing leaves between bands
-        filled.set_linewidth(0.1)
         wall = float(self.canvas.mesh.walls.min()) * inches * 72
-        if not scale.flat:
-            lines = axes.tricontour(
-                triangulation, self.values, levels=scale.levels, colors="black", linestyles="solid",
-                linewidths=float(np.clip(0.05 * wall, 0.05, 0.35)),
-            )  # fmt: skip
-            lines.set_alpha(0.6)
-            lines.set_rasterized(len(self.canvas.mesh.triangles) > RASTERISE_ABOVE)
+        # the bands' edges are the contour lines; they also close the hairlines that anti-aliasing leaves between bands
+        filled.set_edgecolor("face" if scale.flat else "#00000099")
+        filled.set_linewidth(float(np.clip(0.05 * wall, 0.05, 0.35)))
         filled.set_rasterized(len(self.canvas.mesh.triangles) > RASTERISE_ABOVE)
         width = float(np.clip(0.12 * wall, 0.15, 0.8))
         axes.add_collection(LineCollection(self.canvas.mesh.loops, colors=INK, linewidths=width))
