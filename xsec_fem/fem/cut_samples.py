@@ -8,7 +8,6 @@ import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.fem.line_crossings import Crossings
-from xsec_fem.fem.mesh import Mesh
 from xsec_fem.fem.quadrature import interval_rule
 from xsec_fem.fem.reference_triangle import lagrange_triangle
 
@@ -16,7 +15,8 @@ FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
 
 _NEWTON_STEPS = 12  # from the chord in the reference triangle; quadratic: 5 reach round-off on an ordinary triangle
-_CONVERGED = 1e-13  # reference coordinates are of size 1
+_CONVERGED = 1e-7  # of reference coordinates; the step after one of this size would be of 1e-14
+_AT_A_TIME = 4096  # points whose monomials stay in the cache
 _MORE_ON_CURVES = 4  # degrees more on curved triangles, where a nodal function is no polynomial along the line
 
 
@@ -28,19 +28,26 @@ def _basis_table(order: int) -> tuple[IntArray, IntArray, FloatArray]:
     return first, second, np.asarray(np.linalg.inv(y**first * z**second), dtype=np.float64)
 
 
+def _powers(order: int, flat: FloatArray) -> FloatArray:
+    """Powers (p+1, 2, K) of reference coordinates (2, K)."""
+    powers = np.ones((order + 1, *flat.shape))
+    for k in range(1, order + 1):
+        np.multiply(powers[k - 1], flat, out=powers[k])
+    return powers
+
+
 def basis_values(order: int, points: FloatArray) -> FloatArray:
     """Return the basis functions of an order at reference points (..., 2): shape (..., n).
 
     The same numbers as LagrangeTriangle.values, by products instead of powers: these points are many, each used once.
     """
     first, second, table = _basis_table(order)
-    flat = points.reshape(-1, 2).T
-    powers = np.ones((order + 1, *flat.shape))
-    for k in range(1, order + 1):
-        powers[k] = powers[k - 1] * flat
-    products = powers[first, 0] * powers[second, 1]  # (n, K)
-    values = products.T @ table
-    return np.asarray(values.reshape(*points.shape[:-1], len(first)), dtype=np.float64)
+    flat = points.reshape(-1, 2)
+    values = np.empty((len(flat), len(first)))
+    for start in range(0, len(flat), _AT_A_TIME):
+        powers = _powers(order, flat[start : start + _AT_A_TIME].T)
+        np.matmul((powers[first, 0] * powers[second, 1]).T, table, out=values[start : start + _AT_A_TIME])
+    return values.reshape(*points.shape[:-1], len(first))
 
 
 def reference_points(crossings: Crossings, chosen: IntArray, shares: FloatArray) -> FloatArray:
@@ -52,30 +59,39 @@ def reference_points(crossings: Crossings, chosen: IntArray, shares: FloatArray)
     result: FloatArray = ends[:, None, 0] + shares[:, None] * (ends[:, 1] - ends[:, 0])[:, None]
     mesh = crossings.hits.curves.mesh
     bent = np.flatnonzero(mesh.curved[crossings.triangle[chosen]])
-    if not len(bent):
-        return result
-    x = mesh.nodes[mesh.triangles[crossings.triangle[chosen[bent]]]]
-    target = _places(crossings, chosen[bent], shares)
-    at = result[bent]
-    for _ in range(_NEWTON_STEPS):
-        step = _newton_step(mesh, x, at, target)
-        at = at + step
-        if np.abs(step).max() < _CONVERGED:
-            break
-    result[bent] = at
+    step = max(1, _AT_A_TIME // len(shares))
+    for start in range(0, len(bent), step):
+        some = bent[start : start + step]
+        nodes = mesh.nodes[mesh.triangles[crossings.triangle[chosen[some]]]]
+        result[some] = _inverse_map(mesh.order, nodes, result[some], _places(crossings, chosen[some], shares))
     return result
 
 
-def _newton_step(mesh: Mesh, x: FloatArray, at: FloatArray, target: FloatArray) -> FloatArray:
-    """J^-1 (target - x(at)) for nodes x (m, n, 2) at reference points (m, Q, 2)."""
-    flat = at.reshape(-1, 2)
-    gradients = mesh.element.gradients(flat).reshape(*at.shape[:2], -1, 2)
-    off = target - basis_values(mesh.order, at) @ x
-    jacobian = np.einsum("mqnr,mnd->mqdr", gradients, x, optimize=True)
-    det = jacobian[..., 0, 0] * jacobian[..., 1, 1] - jacobian[..., 0, 1] * jacobian[..., 1, 0]
-    by_y = (jacobian[..., 1, 1] * off[..., 0] - jacobian[..., 0, 1] * off[..., 1]) / det
-    by_z = (jacobian[..., 0, 0] * off[..., 1] - jacobian[..., 1, 0] * off[..., 0]) / det
-    return np.stack([by_y, by_z], axis=-1)
+def _inverse_map(order: int, nodes: FloatArray, at: FloatArray, target: FloatArray) -> FloatArray:
+    """Newton's method from reference points (m, Q, 2) to those that triangles of nodes (m, n, 2) map to the target (m, Q, 2)."""
+    first, second, table = _basis_table(order)
+    x = table @ nodes  # coefficients of the monomials
+    for _ in range(_NEWTON_STEPS):
+        powers = _powers(order, at.reshape(-1, 2).T)
+        terms = (
+            powers[first, 0] * powers[second, 1],
+            first[:, None] * powers[np.maximum(first - 1, 0), 0] * powers[second, 1],
+            second[:, None] * powers[first, 0] * powers[np.maximum(second - 1, 0), 1],
+        )
+        value, by_y, by_z = (term.T.reshape(*at.shape[:2], -1) @ x for term in terms)
+        off, det = target - value, by_y[..., 0] * by_z[..., 1] - by_y[..., 1] * by_z[..., 0]
+        step = np.stack(
+            [
+                by_z[..., 1] * off[..., 0] - by_z[..., 0] * off[..., 1],
+                by_y[..., 0] * off[..., 1] - by_y[..., 1] * off[..., 0],
+            ],
+            axis=-1,
+        )
+        step /= det[..., None]
+        at = at + step
+        if np.abs(step).max() < _CONVERGED:
+            break
+    return at
 
 
 def positions(crossings: Crossings, chosen: IntArray, shares: FloatArray) -> FloatArray:
