@@ -23,7 +23,7 @@ def curves_of(whole):
 
 def corners_of(whole):
     curves, geometry = curves_of(whole)
-    points = geometry.frame.from_gmsh(sharp_corners(curves, slit_curves(curves, whole.joints, geometry.part_names)))
+    points = geometry.frame.from_gmsh(sharp_corners(curves, slit_curves(curves, whole.joints, geometry)))
     return sorted(map(tuple, np.round(points, 9).tolist()))
 
 

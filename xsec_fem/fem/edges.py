@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Collection
 from dataclasses import dataclass
 
 import numpy as np
@@ -57,6 +58,23 @@ def mesh_edges(mesh: Mesh) -> Edges:
     triangles = np.where(sides >= 0, sides // 3, -1)
     local = np.where(sides >= 0, sides % 3, -1)
     return Edges(ends[first], triangles, local, number.reshape(count, 3))
+
+
+def edges_between(mesh: Mesh, edges: Edges, first: Collection[str], second: Collection[str]) -> IntArray:
+    """Return the edges (K,) shared by a triangle of a part in `first` and one of a part in `second`."""
+    inner = np.flatnonzero(edges.triangles[:, 1] >= 0)
+    sides = [np.array([name in names for name in mesh.part_names]) for names in (first, second)]
+    a, b = mesh.part_of[edges.triangles[inner]].T
+    found: IntArray = inner[(sides[0][a] & sides[1][b]) | (sides[1][a] & sides[0][b])]
+    return found
+
+
+def edges_round(edges: Edges, inside: npt.NDArray[np.bool_]) -> IntArray:
+    """Return the edges (K,) with one triangle inside (M,) and one outside."""
+    inner = np.flatnonzero(edges.triangles[:, 1] >= 0)
+    sides = inside[edges.triangles[inner]]
+    between: IntArray = inner[sides[:, 0] != sides[:, 1]]
+    return between
 
 
 def connected_bodies(mesh: Mesh, edges: Edges, without: IntArray | None = None) -> IntArray:

@@ -14,7 +14,7 @@ import numpy.typing as npt
 import scipy.sparse as sp
 from scipy.sparse.csgraph import connected_components
 
-from xsec_fem.fem.edge_integrals import local_edge_nodes
+from xsec_fem.fem.edge_integrals import edge_nodes, local_edge_nodes
 from xsec_fem.fem.edges import Edges
 from xsec_fem.fem.mesh import Mesh
 
@@ -40,3 +40,23 @@ def open_slits(mesh: Mesh, edges: Edges, slit: IntArray) -> Mesh:
     old = mesh.triangles.ravel()
     _, first, number = np.unique(old * np.int64(count) + label, return_index=True, return_inverse=True)
     return replace(mesh, nodes=mesh.nodes[old[first]], triangles=number.reshape(mesh.triangles.shape))
+
+
+def facing_edges(mesh: Mesh, edges: Edges) -> IntArray:
+    """Return the pairs (K, 2) of free edges that lie on each other, the two sides of a slit, the lower number first.
+
+    Their nodes have the same coordinates to the last digit, as those of an opened slit do.
+    """
+    free = edges.free
+    places = mesh.nodes[edge_nodes(mesh, edges, free)]
+    reverse = (places[:, 0] > places[:, -1])[:, 0] | (
+        (places[:, 0, 0] == places[:, -1, 0]) & (places[:, 0, 1] > places[:, -1, 1])
+    )
+    places[reverse] = places[reverse, ::-1]
+    _, first, number, count = np.unique(
+        places.reshape(len(free), -1), axis=0, return_index=True, return_inverse=True, return_counts=True
+    )
+    number = number.ravel()
+    twin = np.flatnonzero(count[number] == 2)
+    later = twin[first[number[twin]] != twin]
+    return np.column_stack([free[first[number[later]]], free[later]])

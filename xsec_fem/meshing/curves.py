@@ -11,11 +11,11 @@ import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.meshing.occ_faces import Geometry
+from xsec_fem.meshing.slit_joints import on_strip
 from xsec_fem.model.section import Joint
 
 FloatArray = npt.NDArray[np.float64]
 
-SLIT_KINDS = ("contact", "fillet weld", "fasteners")  # joints whose faying faces are a slit in the mesh
 _SAMPLES = np.array([0.0, 0.02, 0.25, 0.5, 0.75, 0.98, 1.0])
 _SHARP = math.radians(185.0)  # arcs that meet within 5 degrees of a straight line are no corner
 
@@ -71,20 +71,19 @@ def sharp_corners(curves: Sequence[Curve], is_slit: Sequence[bool]) -> FloatArra
     return np.array(corners).reshape(-1, 2)
 
 
-def slit_curves(curves: Sequence[Curve], joints: Sequence[Joint], part_names: Sequence[str]) -> list[bool]:
+def slit_curves(curves: Sequence[Curve], joints: Sequence[Joint], geometry: Geometry) -> list[bool]:
     """Return for each curve whether a joint makes it a slit between its two parts."""
-    faying = set()
+    names, frame = geometry.part_names, geometry.frame
+    middle = frame.from_gmsh(np.array([curve.points[3] for curve in curves]))
+    size = float(np.ptp(middle, axis=0).max())
+    slit = np.zeros(len(curves), bool)
     for joint in joints:
-        if joint.kind in SLIT_KINDS:
-            faying |= {(a, b) for a in joint.first for b in joint.second} | {
-                (b, a) for a in joint.first for b in joint.second
-            }
-    return [
-        curve.left is not None
-        and curve.right is not None
-        and (part_names[curve.left], part_names[curve.right]) in faying
-        for curve in curves
-    ]
+        if joint.is_slit:
+            pairs = {frozenset((a, b)) for a in joint.first for b in joint.second}
+            sides = [{names[part] for part in (curve.left, curve.right) if part is not None} for curve in curves]
+            bonded = [on_strip(middle, bond.strip, size) for bond in joint.bonds if bond.strip is not None]
+            slit |= np.array([side in pairs for side in sides]) & ~np.any(bonded, axis=0)
+    return [bool(value) for value in slit]
 
 
 @dataclass(frozen=True)

@@ -41,7 +41,7 @@ def first_sizes(gmsh: Any, section: Section, geometry: Geometry, order: int) -> 
     field = SizeField(walls.points, sizes).with_points(*_depths(walls, sizes, diameter))
     curves = read_curves(gmsh, geometry)
     field = field.with_points(*_short_curves(curves, geometry, diameter))
-    is_slit = slit_curves(curves, section.joints, geometry.part_names)
+    is_slit = slit_curves(curves, section.joints, geometry)
     corners = geometry.frame.from_gmsh(sharp_corners(curves, is_slit))
     return field.with_points(*_corner_rings(corners, walls, diameter)) if len(corners) else field
 

@@ -9,6 +9,7 @@ from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.file_mesh import read_regions
 from xsec_fem.meshing.gmsh_mesher import mesh_section
 from xsec_fem.meshing.mesh_files import write_mesh_file
+from xsec_fem.meshing.slit_joints import joint_vertices, open_joints
 from xsec_fem.model.outline import Point
 from xsec_fem.model.section import Section
 
@@ -21,7 +22,7 @@ def make_mesh(section: Section, split_points: Sequence[Point] = ()) -> Mesh:
     The order is the one in [solve], else that of the mesh file when above 1, else 4. `split_points` become nodes of a
     drawn section. Raises InputError, MeshingError, MissingLibraryError.
     """
-    mesh = _mesh_of(section, split_points)
+    mesh = open_joints(section, _mesh_of(section, [*split_points, *joint_vertices(section)]))
     if section.solve.mesh_file is not None:
         write_mesh_file(section.solve.mesh_file, mesh)
     return mesh

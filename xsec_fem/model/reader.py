@@ -11,6 +11,7 @@ from pathlib import Path
 from xsec_fem.model.cautions import add_cautions
 from xsec_fem.model.faults import FaultList
 from xsec_fem.model.geometry_checks import check_geometry
+from xsec_fem.model.joint_geometry import with_joint_geometry
 from xsec_fem.model.material_reader import material_names, read_materials
 from xsec_fem.model.mesh_region import check_one_file, mesh_output
 from xsec_fem.model.part_reader import PlacedPart, read_parts
@@ -58,7 +59,8 @@ def section_from_tables(tables: Mapping[str, object], name: str, folder: Path) -
         check_names_once(key, lists[key], faults)
     materials = read_materials(tables.get("materials", {}), faults)
     placed = _read_parts(tables, lists["parts"], folder, faults)
-    joints = read_joints(lists["joints"], names_in(lists["parts"]), faults)
+    known_materials = material_names(tables.get("materials"))
+    joints = read_joints(lists["joints"], names_in(lists["parts"]), known_materials, faults)
     cuts, probes = read_cuts(lists["cuts"], faults), read_probes(lists["probes"], faults)
     actions = read_actions(lists["actions"], faults)
     whole = [part for part in placed if part is not None]
@@ -67,7 +69,7 @@ def section_from_tables(tables: Mapping[str, object], name: str, folder: Path) -
     check_one_file([(part.place, part.part) for part in whole], faults)
     check_geometry(placed, joints, probes, faults)
     faults.raise_if_any()
-    check_use(whole, materials, faults)
+    check_use(whole, materials, faults, [joint.weld.material for _, joint in joints if joint.weld is not None])
     section = Section(
         title=title or Path(name).stem,
         units=units,
@@ -79,6 +81,8 @@ def section_from_tables(tables: Mapping[str, object], name: str, folder: Path) -
         actions=actions,
         solve=solve,
     )
+    section = with_joint_geometry(section, faults)
+    faults.raise_if_any()
     add_cautions(section, faults)
     return replace(section, cautions=tuple(faults.cautions))
 

@@ -9,7 +9,7 @@ from xsec_fem.model.faults import FaultList
 from xsec_fem.model.material_reader import material_place
 from xsec_fem.model.part_reader import PlacedPart
 from xsec_fem.model.schema import JointTable
-from xsec_fem.model.section import Material
+from xsec_fem.model.section import Joint, Material
 from xsec_fem.model.wording import did_you_mean, named, quoted, value_text
 
 _UNNAMED = {"cuts": "cut", "probes": "probe", "actions": "case"}
@@ -83,9 +83,23 @@ def check_joint(joint: JointTable, place: str, part_names: Sequence[str], faults
             )
 
 
-def check_use(parts: Sequence[PlacedPart], materials: Mapping[str, Material], faults: FaultList) -> None:
-    """Caution about materials that no part uses, and a grain angle on a material without grain."""
-    used = {placed.part.material for placed in parts}
+def check_pairs_once(joints: Sequence[tuple[str, Joint]], faults: FaultList) -> None:
+    """Note every pair of parts that two joints claim; joints with their places."""
+    claimed: dict[frozenset[str], str] = {}
+    for place, joint in joints:
+        for pair in (frozenset((a, b)) for a in joint.first for b in joint.second if a != b):
+            if pair in claimed:
+                a, b = sorted(pair)
+                rule = f"claims {quoted(a)} and {quoted(b)}, which {claimed[pair]} joins already"
+                faults.add(f"{place}: between", rule, None, "One joint holds a pair of parts: merge the two.")
+            claimed.setdefault(pair, place)
+
+
+def check_use(
+    parts: Sequence[PlacedPart], materials: Mapping[str, Material], faults: FaultList, also: Iterable[str | None] = ()
+) -> None:
+    """Caution about materials that no part uses (nor a weld, `also`), and a grain angle on a material without grain."""
+    used = {placed.part.material for placed in parts} | set(also)
     for name in materials:
         if name not in used:
             faults.caution("unused material", f"{material_place(name)} is not used by any part.")

@@ -11,7 +11,7 @@ from typing import Annotated, Literal, get_args
 from pydantic import AfterValidator, BaseModel, BeforeValidator, ConfigDict, Field, Strict
 
 from xsec_fem.model.faults import own_words
-from xsec_fem.model.shapes.base import Number
+from xsec_fem.model.shapes.base import NotNegative, Number, Positive
 from xsec_fem.model.wording import did_you_mean, listed
 from xsec_fem.units import UNIT_SYSTEMS
 
@@ -19,6 +19,7 @@ Anchor = Literal[
     "centre", "left", "right", "top", "bottom", "top left", "top right", "bottom left", "bottom right", "origin"
 ]
 LoadPoint = Literal["shear centre", "centroid"]
+WELD_ENDS = ("left", "right", "top", "bottom")
 LARGEST = 1e12  # as for the numbers of shapes: their squares and fourth powers must stay finite
 
 
@@ -66,6 +67,19 @@ def _side(value: object) -> object:
 def _sides(value: object) -> object:
     if not isinstance(value, list) or len(value) != 2:
         raise own_words("must name two sides")
+    return value
+
+
+def _weld_sides(value: object) -> object:
+    if isinstance(value, bool) or value not in (1, 2, *WELD_ENDS) or isinstance(value, float):
+        near = did_you_mean(value, WELD_ENDS) if isinstance(value, str) else ""
+        raise own_words(f"must be 1, 2 or one of {listed(WELD_ENDS)}", near if near.startswith("Did") else "")
+    return value
+
+
+def _rows(value: object) -> object:
+    if not isinstance(value, list | tuple) or not value:
+        raise own_words("must be a list of one or more positions [y1, y2, ...]")
     return value
 
 
@@ -143,14 +157,51 @@ class PartTable(PlacementTable):
 
 
 class JointTable(Table):
-    """[[joints]]; strength in the file's unit of stress."""
+    """What all [[joints]] have."""
 
     name: Name = Field(description="Give the joint a name of its own.")
     between: Annotated[tuple[Side, Side], BeforeValidator(_sides)] = Field(
         description='Name the parts on either side, for example ["web", "flange"].'
     )
-    kind: Literal["glue"] = Field(description='Write kind = "glue".')
+    kind: Annotated[str, Strict()] = Field(description='Write kind = "glue", "contact", "fillet weld" or "fasteners".')
+
+
+class GlueTable(JointTable):
+    """A glue joint; strength in the file's unit of stress."""
+
     strength: Modulus | None = Field(None, description="Give the design shear stress of the joint, or leave it out.")
+
+
+class ContactTable(JointTable):
+    """A contact joint: faces that lie on each other and carry nothing."""
+
+
+class WeldTable(JointTable):
+    """A fillet weld; lengths and stresses in the file's units."""
+
+    throat: Positive | None = Field(None, description="Give the throat of the weld, or its leg.")
+    leg: Positive | None = Field(None, description="Give the leg of the weld, or its throat.")
+    sides: Annotated[int | str, BeforeValidator(_weld_sides)] = Field(
+        2, description='Write sides = 1, 2, or the welded end: "left", "right", "top" or "bottom".'
+    )
+    penetration: NotNegative = Field(
+        0.0, description="Give how far the weld reaches in between the parts, or leave it out."
+    )
+    strength: Modulus | None = Field(None, description="Give the design shear stress on the throat, or leave it out.")
+    material: Annotated[str, Strict()] | None = Field(
+        None, description="Give the name of a [materials.NAME] table, or leave it out for that of the first side."
+    )
+
+
+class FastenersTable(JointTable):
+    """Rows of fasteners; lengths and forces in the file's units."""
+
+    rows: Annotated[tuple[Number, ...], BeforeValidator(_rows)] = Field(
+        description="Give the position of each row, y, or z where the faces meet along a line steeper than 45 degrees."
+    )
+    diameter: Positive = Field(description="Give the diameter: the width of the strip that each row holds together.")
+    capacity: Annotated[Force, Field(gt=0)] = Field(description="Give the design shear force of one fastener.")
+    spacing: Positive | None = Field(None, description="Give the spacing along the beam, or leave it out to be told.")
 
 
 class CutTable(Table):

@@ -67,6 +67,7 @@ class Part:
     """One part: a face in the file's axes, or a region of a mesh file; exactly one of the two is set.
 
     `grain_angle` [deg] is in the section's axes: the file's angle, mirrored and turned with the part; 0 when isotropic.
+    `bead_of` is the weld joint whose bead it is, None for a part of the file.
     """
 
     name: str
@@ -77,17 +78,74 @@ class Part:
     embedded_in: str | None = None
     grain_angle: float = 0.0
     walls: tuple[Wall, ...] = ()
+    bead_of: str | None = None
+
+
+@dataclass(frozen=True)
+class FilletWeld:
+    """Numbers of a fillet weld [mm]: either `throat` or `leg` is None.
+
+    `sides` is 1, 2, or the end of each faying line that is welded ("left", "right", "top", "bottom"); `penetration` is how
+    far the bead reaches into the faying line; `material` None: that of the first side.
+    """
+
+    throat: float | None = None
+    leg: float | None = None
+    sides: int | str = 2
+    penetration: float = 0.0
+    material: str | None = None
+
+
+@dataclass(frozen=True)
+class Fasteners:
+    """Rows of fasteners at coordinates y (z where the faying line is steeper than 45 deg) [mm]; capacity of one [N]."""
+
+    rows: tuple[float, ...]
+    diameter: float
+    capacity: float
+    spacing: float | None = None
+
+
+@dataclass(frozen=True)
+class Bond:
+    """Where a joint that is a slit still carries: a weld bead, or the strip of a fastener row.
+
+    Attributes
+    ----------
+    name : "bead 1", "row y = 70".
+    strip : ends of the stretch of the faying line that stays bonded (row, penetration); None without one.
+    bead : name of the bead's part.
+    throat : from the root to the nearest point of the bead's surface.
+    """
+
+    name: str
+    strip: tuple[Point, Point] | None = None
+    bead: str | None = None
+    throat: tuple[Point, Point] | None = None
 
 
 @dataclass(frozen=True)
 class Joint:
-    """A declared joint between two groups of parts; `strength` [MPa] for glue."""
+    """A declared joint between two groups of parts; `strength` [MPa] of glue or on the throat of a weld.
+
+    `bonds` and `vertices` (points of its faying lines where the mesh needs a node) follow from the parts' outlines:
+    `xsec_fem.model.joint_geometry` fills them in.
+    """
 
     name: str
     first: tuple[str, ...]
     second: tuple[str, ...]
     kind: str
     strength: float | None = None
+    weld: FilletWeld | None = None
+    fasteners: Fasteners | None = None
+    bonds: tuple[Bond, ...] = ()
+    vertices: tuple[Point, ...] = ()
+
+    @property
+    def is_slit(self) -> bool:
+        """True when the faying faces come apart in the mesh, but for the bonds."""
+        return self.kind != "glue"
 
 
 @dataclass(frozen=True)

@@ -15,9 +15,10 @@ _LENGTHS = (
     "width", "height", "depth", "diameter", "thickness", "radius", "radii", "web", "flange", "lip", "corner_radius",
     "root_radius", "toe_radius", "bend_radius", "outer_radius", "inner_radius", "bottom_width", "bottom_flange", "at",
     "start", "to", "from", "centre", "through", "points", "load_point",
+    "throat", "leg", "penetration", "rows", "spacing",
 )  # fmt: skip
 _STRESSES = ("E", "G", "Gxy", "Gxz", "strength", "shear_strength")
-_FORCES = ("N", "Vy", "Vz")
+_FORCES = ("N", "Vy", "Vz", "capacity")
 _MOMENTS = ("T", "My", "Mz")
 _DEGREES = ("rotate", "grain_angle", "from_deg", "to_deg")
 _LONGEST_VALUE = 60  # characters of a value worth repeating on one line
