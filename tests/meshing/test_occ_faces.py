@@ -122,3 +122,28 @@ def test_a_single_part_is_one_face_and_keeps_its_name():
     geometry, areas = built({"tube": Face(circle(10.0), (circle(8.0),))})
     assert (len(geometry.faces), geometry.part_names) == (1, ("tube",))
     assert areas == pytest.approx([36 * math.pi], rel=1e-9)
+
+
+@pytest.mark.parametrize(
+    ("outer", "hole", "place"),
+    [
+        ([(0, 0), (4, 4), (2, 0), (0, 2)], None, r"\(1, 1\)"),
+        ([(0, 0), (4, 0), (6, 0), (4, 0), (4, 4), (0, 4)], None, r"\(6, 0\)"),
+        ([(0, 0), (4, 0), (4, 4), (0, 4)], [(3, 1), (5, 1), (5, 3), (3, 3)], r"\(4, 1\)"),
+        ([(0, 0), (4, 0), (4, 4), (0, 4)], [(0, 1), (1, 1), (1, 2), (0, 2)], r"\(0, 1\)"),
+    ],
+)
+def test_an_outline_that_crosses_itself_never_reaches_gmsh(outer, hole, place):
+    # gmsh was seen not to come back from such outlines
+    face = polygon(outer, hole) if hole else polygon(outer)
+    with pytest.raises(MeshingError, match=rf"part 'p': its outline crosses or touches itself or a hole at {place}"):
+        built({"p": face})
+
+
+@pytest.mark.parametrize("second", [{}, {"q": rectangle(10, 10, 11, 11)}])
+def test_a_hole_outside_its_part_is_told(second):
+    face = polygon([(0, 0), (2, 0), (2, 2), (0, 2)], [(5, 5), (6, 5), (6, 6), (5, 6)])
+    with pytest.raises(
+        MeshingError, match=r"part 'p': its outline less its holes has an area of 3 mm², but gmsh makes \S+ of it"
+    ):
+        built({"p": face, **second})

@@ -16,12 +16,16 @@ import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.errors import Fault, InputError, MeshingError
+from xsec_fem.model.crossings import first_crossing
 from xsec_fem.model.outline import Arc, Face, Line, Loop, Point, Segment
 from xsec_fem.model.section import Part, Section
 
 FloatArray = npt.NDArray[np.float64]
 
 _FAR = 16.0  # a section farther from the origin than this many diameters is shifted there
+_WIDTH = (
+    1e-3  # gmsh's units: a band along the outlines, ten times the width of the gaps that are closed, may change hands
+)
 _QUARTER = 90.0  # degrees: the kernel takes arcs below 180 only, and a quarter keeps symmetric outlines symmetric
 
 
@@ -67,9 +71,11 @@ def build_geometry(gmsh: Any, section: Section, split_points: Sequence[Point] = 
     `split_points` are points that become vertices, so that the mesh has a node there. Raises MeshingError when two
     parts overlap, InputError when an embedded part lies outside its host.
     """
+    _check_outlines(section)
     frame = section_frame(section)
     drawn = [gmsh_face(gmsh, part.face, frame) for part in section.parts if part.face is not None]
     claims = _fragments(gmsh, drawn, [_point(gmsh, p, frame) for p in split_points])
+    _check_areas(gmsh, section, claims, frame)
     gmsh.model.occ.synchronize()
     faces = _owners(gmsh, section, claims, frame)
     return Geometry(faces, frame, tuple(part.name for part in section.parts))
@@ -136,6 +142,30 @@ def _fragments(gmsh: Any, drawn: list[int], points: list[int]) -> dict[int, list
             if dim == 2 and part not in claims.setdefault(tag, []):
                 claims[tag].append(part)
     return dict(sorted(claims.items()))
+
+
+def _check_outlines(section: Section) -> None:
+    """Raise MeshingError for an outline that crosses or touches itself: gmsh may never come back from one."""
+    for part in section.parts:
+        place = first_crossing(part.face.loops) if part.face is not None else None
+        if place is not None:
+            raise MeshingError(
+                f"part {part.name!r}: its outline crosses or touches itself or a hole at ({place[0]:.6g}, {place[1]:.6g})"
+            )
+
+
+def _check_areas(gmsh: Any, section: Section, claims: dict[int, list[int]], frame: Frame) -> None:
+    """The pieces of each part must make up the area of its outline: the kernel takes a hole outside without a word."""
+    found = np.zeros(len(section.parts))
+    for tag, parts in claims.items():
+        found[parts] += gmsh.model.occ.getMass(2, tag) / frame.factor**2
+    for part, area in zip(section.parts, found, strict=True):
+        face = part.face
+        if face is not None and abs(area - face.area) > _WIDTH / frame.factor * sum(loop.length for loop in face.loops):
+            raise MeshingError(
+                f"part {part.name!r}: its outline less its holes has an area of {face.area:.6g} {section.units.length}², "
+                f"but gmsh makes {area:.6g} of it. A hole lies outside it or in another hole"
+            )
 
 
 def _owners(gmsh: Any, section: Section, claims: dict[int, list[int]], frame: Frame) -> tuple[tuple[int, int], ...]:
