@@ -112,26 +112,32 @@ def _package(module: str, name: str, bring: Callable[[str], object]) -> Finding:
 def mending_command(findings: Sequence[Finding], release_file: Path = _OS_RELEASE) -> str | None:
     """Return the one shell line that mends all that can be mended; None when there is none, the reason told on stderr.
 
-    Packages are reinstalled only when they are not there at all: one that is there but cannot load lacks a library.
+    Packages are installed when they are not there; one that is there but cannot load lacks a system library, and is
+    installed anew only when all of these are found.
     """
     missing = [finding.name for finding in findings if not finding.ok]
-    steps = []
-    libraries = [name for name in missing if name in GMSH_LIBRARIES]
-    if libraries:
-        installer = _installer(release_file)
-        if installer is None:
-            print(f"Install the packages of your system that hold {', '.join(libraries)}.", file=sys.stderr)
-        else:
-            steps.append(installer.line(libraries, _sudo()))
-    packages = [name for _, name in MODULES if name in missing and not _is_installed(name)]
-    if packages:
-        steps.append(f"{shlex.quote(sys.executable)} -m pip install {' '.join(packages)}")
     if "Python" in missing:
         print("Make a virtual environment with Python 3.11 or newer.", file=sys.stderr)
-    broken = [name for _, name in MODULES if name in missing and name not in packages]
-    if broken and not steps:
-        steps.append(f"{shlex.quote(sys.executable)} -m pip install --force-reinstall {' '.join(broken)}")
+    steps = _library_step([name for name in missing if name in GMSH_LIBRARIES], release_file)
+    broken = [name for _, name in MODULES if name in missing]
+    absent = [name for name in broken if not _is_installed(name)]
+    pip = f"{shlex.quote(sys.executable)} -m pip install"
+    if absent:
+        steps.append(f"{pip} {' '.join(absent)}")
+    elif broken and not steps:
+        steps.append(f"{pip} --force-reinstall {' '.join(broken)}")
     return " && ".join(steps) or None
+
+
+def _library_step(libraries: Sequence[str], release_file: Path) -> list[str]:
+    """The command for the missing system libraries; none, and a sentence on stderr, on an unknown system."""
+    if not libraries:
+        return []
+    installer = _installer(release_file)
+    if installer is None:
+        print(f"Install the packages of your system that hold {', '.join(libraries)}.", file=sys.stderr)
+        return []
+    return [installer.line(libraries, _sudo())]
 
 
 def _installer(release_file: Path) -> Installer | None:

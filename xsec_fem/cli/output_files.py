@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
+from contextlib import contextmanager
 from pathlib import Path
 
 import numpy as np
@@ -32,34 +33,33 @@ def output_folders(files: Sequence[Path], out: Path | None) -> list[Path]:
     return folders
 
 
-def make_folder(folder: Path) -> None:
-    """Make the folder and those above it; InputError when it cannot be made."""
+@contextmanager
+def writing_to(folder: Path) -> Iterator[None]:
+    """Turn any failure to write into one InputError that names the folder, the reason and the remedy."""
     try:
-        folder.mkdir(parents=True, exist_ok=True)
+        yield
     except OSError as error:
-        raise _unwritable(folder, error) from error
+        reason = (error.strerror or str(error)).lower()
+        remedy = "Give another folder with --out."
+        raise InputError(
+            [Fault("", f"output folder {folder}", f"cannot be written: {reason}", None, remedy)]
+        ) from error
 
 
 def write_numbers(result: Result, folder: Path) -> list[Path]:
-    """Write fields.vtu, and joints.csv when there are joints; return the files. Raises InputError when it cannot."""
+    """Write fields.vtu, and joints.csv when there are joints; return the files. Raises OSError when it cannot."""
     files = [folder / "fields.vtu"]
-    try:
-        write_fields(files[0], result.mesh, vtu_fields(result))
-        if any(case.joints for case in result.cases):
-            files.append(folder / "joints.csv")
-            files[-1].write_text(joints_csv(result), encoding="utf-8")
-    except OSError as error:
-        raise _unwritable(folder, error) from error
+    write_fields(files[0], result.mesh, vtu_fields(result))
+    if any(case.joints for case in result.cases):
+        files.append(folder / "joints.csv")
+        files[-1].write_text(joints_csv(result), encoding="utf-8")
     return files
 
 
 def write_json(result: Result, folder: Path) -> Path:
-    """Write results.json and return it; InputError when it cannot be written."""
+    """Write results.json and return it; OSError when it cannot be written."""
     file = folder / "results.json"
-    try:
-        file.write_text(result.to_json(), encoding="utf-8")
-    except OSError as error:
-        raise _unwritable(folder, error) from error
+    file.write_text(result.to_json(), encoding="utf-8")
     return file
 
 
@@ -84,9 +84,3 @@ def _fields_of(case: CaseResult) -> dict[str, np.ndarray]:
         "tau_xy": stress.tau_xy, "tau_xz": stress.tau_xz, "tau": stress.tau, "tau_vector": vector,
         "sigma_x": stress.sigma_x, "von_mises": stress.von_mises,
     }  # fmt: skip
-
-
-def _unwritable(folder: Path, error: OSError) -> InputError:
-    reason = (error.strerror or str(error)).lower()
-    remedy = "Give another folder with --out"
-    return InputError([Fault("", f"output folder {folder}", f"cannot be written: {reason}", None, remedy)])

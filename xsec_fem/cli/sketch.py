@@ -8,7 +8,7 @@ from dataclasses import replace
 from pathlib import Path
 
 from xsec_fem.cli.exit_codes import FINE, report_error
-from xsec_fem.cli.output_files import make_folder, output_folders
+from xsec_fem.cli.output_files import output_folders, writing_to
 from xsec_fem.errors import MissingLibraryError
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.front import make_mesh
@@ -30,11 +30,12 @@ def run(args: argparse.Namespace) -> int:
     """Check and draw one section file and return the exit code; raises XsecError for faults of the input."""
     section = read_section(args.file)
     folder = output_folders([Path(args.file)], args.out)[0]
-    make_folder(folder)
     code, mesh, files = FINE, None, []
     try:
         mesh = mesh_of_file_parts(section)
-        files = write_sketch(section, folder, args.svg, mesh)
+        with writing_to(folder):
+            folder.mkdir(parents=True, exist_ok=True)
+            files = write_sketch(section, folder, args.svg, mesh)
     except MissingLibraryError as error:
         code = report_error(error, args.file)
     print_blocks(section_summary(section, [str(file) for file in files], mesh), sys.stdout)

@@ -10,7 +10,7 @@ from dataclasses import dataclass, replace
 from pathlib import Path
 
 from xsec_fem.cli.exit_codes import FINE, OVER_STRENGTH, report_error
-from xsec_fem.cli.output_files import make_folder, output_folders, write_json, write_numbers
+from xsec_fem.cli.output_files import output_folders, write_json, write_numbers, writing_to
 from xsec_fem.errors import MissingLibraryError, XsecError
 from xsec_fem.model.reader import read_section
 from xsec_fem.pipeline import solve
@@ -81,17 +81,20 @@ def solve_file(file: str, folder: Path, args: argparse.Namespace) -> Solved:
     read = time.perf_counter() - start
     if args.order is not None:
         section = replace(section, solve=replace(section.solve, order=args.order))
-    make_folder(folder)
-    result, code, pictures, drawing = solve(section), FINE, [], time.perf_counter()
-    if not args.no_pictures:
-        try:
-            pictures = write_pictures(result, folder, args.svg)
-        except MissingLibraryError as error:
-            code = report_error(error, file)
-    now = time.perf_counter()
-    files = write_numbers(result, folder)
-    result = result.with_timings(read=read, pictures=now - drawing, total=time.perf_counter() - start)
-    files = [write_json(result, folder), *files, *pictures]
+    with writing_to(folder):
+        folder.mkdir(parents=True, exist_ok=True)
+    result, code, pictures = solve(section), FINE, []
+    with writing_to(folder):
+        drawing = time.perf_counter()
+        if not args.no_pictures:
+            try:
+                pictures = write_pictures(result, folder, args.svg, two_processes=True)
+            except MissingLibraryError as error:
+                code = report_error(error, file)
+        now = time.perf_counter()
+        files = write_numbers(result, folder)
+        result = result.with_timings(read=read, pictures=now - drawing, total=time.perf_counter() - start)
+        files = [write_json(result, folder), *files, *pictures]
     return Solved(result, files, max(code, OVER_STRENGTH if result.over_strength else FINE))
 
 
