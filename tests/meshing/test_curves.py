@@ -12,11 +12,12 @@ from xsec_fem.meshing.curves import read_curves, sharp_corners, slit_curves
 from xsec_fem.meshing.gmsh_session import gmsh_session
 from xsec_fem.meshing.occ_faces import build_geometry
 from xsec_fem.model.outline import Face
+from xsec_fem.model.section import Bond, Joint
 
 
 def curves_of(whole):
     with gmsh_session() as gmsh:
-        geometry = build_geometry(gmsh, whole)
+        geometry = build_geometry(gmsh, whole, [point for one in whole.joints for point in one.vertices])
         curves = read_curves(gmsh, geometry)
     return curves, geometry
 
@@ -69,6 +70,13 @@ def test_a_joint_that_parts_the_faces_makes_a_slit(kind):
     assert corners_of(section(faces, joints=(joint("left", "right", kind),))) == [(0.0, 10.0)]
     assert corners_of(section(faces, joints=(joint("right", "left", kind),))) == [(0.0, 10.0)]
     assert corners_of(section(faces, joints=(joint("left", "cap", "glue"),))) == []
+
+
+def test_a_bonded_strip_of_a_slit_has_a_corner_at_either_end():
+    faces = {"lower": rectangle(-50, -6, 50, 0), "upper": rectangle(-50, 0, 50, 6)}
+    ends = ((15.0, 0.0), (25.0, 0.0))
+    row = Joint("row", ("lower",), ("upper",), "fasteners", bonds=(Bond("row y = 20", ends),), vertices=ends)
+    assert corners_of(section(faces, joints=(row,))) == list(ends)
 
 
 def test_a_slit_cancels_the_corners_at_its_ends():

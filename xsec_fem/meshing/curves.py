@@ -10,13 +10,14 @@ from typing import Any
 import numpy as np
 import numpy.typing as npt
 
+from xsec_fem.fem.strip_edges import on_strip
 from xsec_fem.meshing.occ_faces import Geometry
-from xsec_fem.meshing.slit_joints import on_strip
 from xsec_fem.model.section import Joint
 
 FloatArray = npt.NDArray[np.float64]
 
 _SAMPLES = np.array([0.0, 0.02, 0.25, 0.5, 0.75, 0.98, 1.0])
+_LARGEST = 128.0  # diameter of the section in gmsh's axes, at most
 _SHARP = math.radians(185.0)  # arcs that meet within 5 degrees of a straight line are no corner
 
 
@@ -56,7 +57,7 @@ def read_curves(gmsh: Any, geometry: Geometry) -> list[Curve]:
     ]
 
 
-def sharp_corners(curves: Sequence[Curve], is_slit: Sequence[bool]) -> FloatArray:
+def sharp_corners(curves: Sequence[Curve], is_slit: Sequence[bool] | npt.NDArray[np.bool_]) -> FloatArray:
     """Return the points (k, 2), in gmsh's axes, where solid turns through more than 185 degrees.
 
     A curve marked in `is_slit` parts the solid on its two sides, so that the end of a slit is a corner of 360 degrees.
@@ -71,19 +72,24 @@ def sharp_corners(curves: Sequence[Curve], is_slit: Sequence[bool]) -> FloatArra
     return np.array(corners).reshape(-1, 2)
 
 
-def slit_curves(curves: Sequence[Curve], joints: Sequence[Joint], geometry: Geometry) -> list[bool]:
-    """Return for each curve whether a joint makes it a slit between its two parts."""
-    names, frame = geometry.part_names, geometry.frame
-    middle = frame.from_gmsh(np.array([curve.points[3] for curve in curves]))
-    size = float(np.ptp(middle, axis=0).max())
-    slit = np.zeros(len(curves), bool)
+def slit_curves(curves: Sequence[Curve], joints: Sequence[Joint], geometry: Geometry) -> npt.NDArray[np.bool_]:
+    """Return (C,) True for each curve that a joint makes a slit between its two parts; bonded strips of it are none."""
+    result = np.zeros(len(curves), bool)
+    names = [_parts_beside(curve, geometry.part_names) for curve in curves]
+    middles = geometry.frame.from_gmsh(np.array([curve.points[len(_SAMPLES) // 2] for curve in curves]))
     for joint in joints:
         if joint.is_slit:
-            pairs = {frozenset((a, b)) for a in joint.first for b in joint.second}
-            sides = [{names[part] for part in (curve.left, curve.right) if part is not None} for curve in curves]
-            bonded = [on_strip(middle, bond.strip, size) for bond in joint.bonds if bond.strip is not None]
-            slit |= np.array([side in pairs for side in sides]) & ~np.any(bonded, axis=0)
-    return [bool(value) for value in slit]
+            faying = {frozenset((a, b)) for a in joint.first for b in joint.second}
+            parted = np.array([pair in faying for pair in names])
+            for bond in joint.bonds:
+                if bond.strip is not None:
+                    parted &= ~on_strip(middles, bond.strip, _LARGEST / geometry.frame.factor)
+            result |= parted
+    return result
+
+
+def _parts_beside(curve: Curve, part_names: Sequence[str]) -> frozenset[str]:
+    return frozenset(part_names[part] for part in (curve.left, curve.right) if part is not None)
 
 
 @dataclass(frozen=True)
