@@ -102,6 +102,24 @@ class MeshStep:
 
 
 @dataclass(frozen=True)
+class ConvergenceRow:
+    """One mesh of the evidence: degree, nodes, triangles, bound of the energy error, observed order (None on the first row),
+
+    IT [mm⁴] and Asz [mm²] with their guaranteed intervals.
+    """
+
+    degree: int
+    nodes: int
+    elements: int
+    energy_error: float
+    observed_order: float | None
+    IT: float
+    IT_interval: tuple[float, float]
+    Asz: float
+    Asz_interval: tuple[float, float]
+
+
+@dataclass(frozen=True)
 class Contact:
     """Two parts that touch along `length` [mm]; `joint` names the declared joint, None when they are simply one solid."""
 
@@ -131,8 +149,19 @@ class ProbeResult:
 
 
 @dataclass(frozen=True)
+class CornerReading:
+    """A singular corner under one load case: |tau| at `distance` [MPa] and K of |tau| = K r^exponent; None where not to be had."""
+
+    y: float
+    z: float
+    distance: float
+    tau: float | None
+    intensity: float | None
+
+
+@dataclass(frozen=True)
 class CaseResult:
-    """One load case: actions as given, forces at the shear centre, largest stresses, joints and probes."""
+    """One load case: actions as given, forces at the shear centre, largest stresses, joints, probes and corners."""
 
     name: str
     actions: Actions
@@ -141,6 +170,7 @@ class CaseResult:
     parts: tuple[PartResult, ...]
     joints: tuple[JointResult, ...] = ()
     probes: tuple[ProbeResult, ...] = ()
+    corners: tuple[CornerReading, ...] = ()
 
     @property
     def T_total(self) -> float:
@@ -200,6 +230,8 @@ class Result:
     contacts, corners, checks, warnings : what touches, where stress has no limit, trust, cautions.
     fields : nodal fields of unit actions.
     certificate : guaranteed intervals, None when not asked for.
+    rounded : the same section with its sharp corners rounded by [solve] try_radius, None when not asked for.
+    convergence : rows of the evidence, empty when not asked for.
     mesh_steps : the meshes solved on the way to the accuracy asked for, the last one being `mesh`.
     versions : of this package and the libraries used.
     timings : seconds by stage.
@@ -215,7 +247,9 @@ class Result:
     warnings: tuple[Caution, ...]
     fields: UnitFields
     certificate: Certificate | None = None
+    rounded: Result | None = None
     mesh_steps: tuple[MeshStep, ...] = ()
+    convergence: tuple[ConvergenceRow, ...] = ()
     versions: Mapping[str, str] = field(default_factory=dict)
     timings: Mapping[str, float] = field(default_factory=dict)
 
@@ -269,6 +303,8 @@ class Result:
             "contacts": [asdict(contact) for contact in self.contacts],
             "corners": [_corner_dict(corner) for corner in self.corners],
             "cases": [_case_dict(case) for case in self.cases],
+            **({} if self.rounded is None else {"try_radius": _rounded_dict(self.rounded)}),
+            **({"convergence": [asdict(row) for row in self.convergence]} if self.convergence else {}),
             "timings": dict(self.timings),
             "checks": [{**asdict(check), "ok": check.ok} for check in self.checks],
             "warnings": [asdict(caution) for caution in self.warnings],
@@ -302,6 +338,17 @@ def _corner_dict(corner: Corner) -> dict[str, Any]:
     }  # fmt: skip
 
 
+def _rounded_dict(rounded: Result) -> dict[str, Any]:
+    return {
+        "radius": rounded.section.solve.try_radius,
+        "properties": asdict(rounded.properties),
+        "cases": [
+            {"name": case.name, "tau_max": asdict(case.tau_max), "von_mises_max": asdict(case.von_mises_max)}
+            for case in rounded.cases
+        ],
+    }
+
+
 def _largest_dict(largest: Largest) -> dict[str, Any]:
     return asdict(largest)
 
@@ -325,5 +372,8 @@ def _case_dict(case: CaseResult) -> dict[str, Any]:
             {"name": probe.name, "y": probe.y, "z": probe.z, **asdict(value)}
             for probe in case.probes
             for value in probe.values
+        ],
+        "corners": [
+            {key: value for key, value in asdict(corner).items() if value is not None} for corner in case.corners
         ],
     }  # fmt: skip

@@ -2,38 +2,74 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
+from dataclasses import dataclass
+
+import numpy as np
+import numpy.typing as npt
 
 from xsec_fem.errors import Fault, InputError
 from xsec_fem.model.section import Actions, Section
 from xsec_fem.recovery.corners import Corner
 from xsec_fem.recovery.joints import JointFlows, joint_result
-from xsec_fem.recovery.largest import Samples, largest_by_part
+from xsec_fem.recovery.largest import Samples, largest_by_part, read_beside_corners
 from xsec_fem.recovery.section_forces import reduce_actions
-from xsec_fem.recovery.stress_field import StressField, UnitFields
-from xsec_fem.results import CaseResult, PartResult, ProbeResult, Properties
+from xsec_fem.recovery.stress_field import SectionForces, StressField, UnitFields
+from xsec_fem.results import CaseResult, CornerReading, PartResult, ProbeResult, Properties
+
+FloatArray = npt.NDArray[np.float64]
 
 
-def solve_case(
-    section: Section,
-    actions: Actions,
-    fields: UnitFields,
-    properties: Properties,
-    corners: Sequence[Corner],
-    rings: Samples,
-    flows: Sequence[JointFlows],
-) -> CaseResult:
+@dataclass(frozen=True)
+class Recovered:
+    """What every load case is combined from.
+
+    Attributes
+    ----------
+    fields : nodal fields of unit actions.
+    properties : constants of the section.
+    corners : singular corners; `rings` the points beside them, `intensities` (C, 3) their K under unit Vy, Vz, T.
+    flows : the joints' flows under unit actions.
+    """
+
+    fields: UnitFields
+    properties: Properties
+    corners: Sequence[Corner]
+    rings: Samples
+    intensities: FloatArray
+    flows: Sequence[JointFlows]
+
+
+def solve_case(section: Section, actions: Actions, unit: Recovered) -> CaseResult:
     """Return the stresses, largest values, joints and probes of one load case [N, mm, MPa]; InputError for a probe outside."""
-    forces = reduce_actions(actions, properties)
-    stress = fields.combine(forces)
-    shear = largest_by_part(stress, corners, rings, "tau")
-    equivalent = largest_by_part(stress, corners, rings, "von_mises")
+    forces = reduce_actions(actions, unit.properties)
+    stress = unit.fields.combine(forces)
+    shear = largest_by_part(stress, unit.corners, unit.rings, "tau")
+    equivalent = largest_by_part(stress, unit.corners, unit.rings, "von_mises")
     parts = tuple(
         PartResult(tau.part, tau, von_mises, _utilisation(section, tau.part, tau.value, von_mises.value))
         for tau, von_mises in zip(shear, equivalent, strict=True)
     )
-    joints = tuple(joint_result(flow, fields, forces, corners) for flow in flows)
-    return CaseResult(actions.name, actions, forces, stress, parts, joints, probe_results(section, stress))
+    joints = tuple(joint_result(flow, unit.fields, forces, unit.corners) for flow in unit.flows)
+    probes = probe_results(section, stress)
+    return CaseResult(
+        actions.name, actions, forces, stress, parts, joints, probes, corner_readings(stress, forces, unit)
+    )
+
+
+def corner_readings(stress: StressField, forces: SectionForces, unit: Recovered) -> tuple[CornerReading, ...]:
+    """Return, for every singular corner, |tau| at its stated distance [MPa] and K [MPa mm^-exponent]."""
+    beside = read_beside_corners(stress, unit.rings, len(unit.corners))
+    K = np.abs(unit.intensities @ np.array([forces.Vy, forces.Vz, forces.T]))
+    return tuple(
+        CornerReading(corner.y, corner.z, corner.distance, _known(tau), _known(intensity))
+        for corner, tau, intensity in zip(unit.corners, beside.tolist(), K.tolist(), strict=True)
+    )
+
+
+def _known(value: float) -> float | None:
+    return value if math.isfinite(value) else None
 
 
 def _utilisation(section: Section, part: str, tau: float, von_mises: float) -> float | None:

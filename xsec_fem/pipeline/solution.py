@@ -65,7 +65,7 @@ def solve_mesh(section: Section, mesh: Mesh, watch: Stopwatch, certificate: bool
     with watch.stage("recover"):
         integrals = field_integrals(warping)
         stiffness = shear_stiffness(area, integrals)
-        corners = find_corners(mesh, edges, moduli.G)
+        corners = find_corners(mesh, edges, moduli.G, section.solve.corner_distance)
     if not certificate:
         return Solution(mesh, edges, warping, integrals, stiffness, corners, None)
     with watch.stage("certificate"):

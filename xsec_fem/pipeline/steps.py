@@ -10,19 +10,22 @@ Steps 2 to 7 are in `solution.py`, the way back in `adaptive.py`.
 from __future__ import annotations
 
 import platform
+from dataclasses import replace
 from importlib.metadata import PackageNotFoundError, version
 
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.front import make_mesh
+from xsec_fem.model.root_radius import with_root_radius
 from xsec_fem.model.section import Section
 from xsec_fem.pipeline.adaptive import Progress, mesh_step, solve_adaptively
 from xsec_fem.pipeline.bodies import named_contacts
 from xsec_fem.pipeline.cautions import Evidence, cautions
 from xsec_fem.pipeline.checks import checks
 from xsec_fem.pipeline.constants import certificate_over_reference, section_properties
-from xsec_fem.pipeline.load_cases import solve_case
+from xsec_fem.pipeline.load_cases import Recovered, solve_case
 from xsec_fem.pipeline.solution import Solution, solve_mesh
 from xsec_fem.pipeline.stopwatch import Stopwatch
+from xsec_fem.recovery.corner_intensity import corner_intensities
 from xsec_fem.recovery.joints import joint_flows
 from xsec_fem.recovery.largest import corner_rings
 from xsec_fem.recovery.stress_field import unit_fields
@@ -45,6 +48,15 @@ def solve(section: Section, certificate: bool = True, progress: Progress | None 
     MeshingError, SolveError, MissingLibraryError
         When a step fails; the message says where.
     """
+    result = _solve_once(section, certificate, progress)
+    if section.solve.try_radius is None:
+        return result
+    sharp = [(corner.y, corner.z) for corner in result.corners if len(corner.parts) == 1]
+    rounded = _solve_once(with_root_radius(section, section.solve.try_radius, sharp), certificate, progress)
+    return replace(result, rounded=rounded)
+
+
+def _solve_once(section: Section, certificate: bool, progress: Progress | None) -> Result:
     watch = Stopwatch()
     if certificate:
         solution, steps = solve_adaptively(section, watch, progress)
@@ -69,10 +81,9 @@ def recover(section: Section, solution: Solution, steps: tuple[MeshStep, ...], w
         fields = unit_fields(warping, solution.stiffness)  # 8
         contacts = named_contacts(section, mesh, edges)  # 9
         flows = [joint_flows(warping, solution.stiffness, fields, edges, joint) for joint in section.joints]
-        rings = corner_rings(mesh, corners)
-        cases = tuple(  # 10
-            solve_case(section, actions, fields, properties, corners, rings, flows) for actions in section.actions
-        )
+        rings, intensities = corner_rings(mesh, corners), corner_intensities(warping, solution.stiffness, corners)
+        unit = Recovered(fields, properties, corners, rings, intensities, flows)
+        cases = tuple(solve_case(section, actions, unit) for actions in section.actions)  # 10
         evidence = Evidence(section, solution, properties, cases, fields)
     return Result(  # 11
         section, mesh, properties, cases, contacts, corners,

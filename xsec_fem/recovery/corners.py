@@ -7,7 +7,7 @@ A corner is listed when its stress exponent lambda - 1 is below -0.01 (at a tent
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 import numpy.typing as npt
@@ -41,7 +41,8 @@ class Corner:
     parts : names of the parts that meet there.
     wall : thickness of the thinner adjoining wall.
     distance : stresses nearer than this to the corner are not reported as stresses.
-    directions : (start, end) of the material, counter-clockwise from +y [rad].
+    sectors : the materials around it, counter-clockwise.
+    part : index of the first part in the mesh.
     """
 
     y: float
@@ -51,7 +52,13 @@ class Corner:
     parts: tuple[str, ...]
     wall: float
     distance: float
-    directions: tuple[float, float]
+    sectors: tuple[Sector, ...]
+    part: int
+
+    @property
+    def directions(self) -> tuple[float, float]:
+        """(start, end) of the material, counter-clockwise from +y [rad]."""
+        return self.sectors[0].start, self.sectors[-1].end
 
 
 def _sector_directions(mesh: Mesh) -> tuple[FloatArray, FloatArray]:
@@ -99,9 +106,10 @@ def _wall(place: FloatArray, directions: tuple[float, float], segments: FloatArr
     return depth
 
 
-def find_corners(mesh: Mesh, edges: Edges, G: FloatArray) -> tuple[Corner, ...]:
+def find_corners(mesh: Mesh, edges: Edges, G: FloatArray, distance: float | None = None) -> tuple[Corner, ...]:
     """Return the singular corners of the free boundary, sorted by place; G (P, 2, 2) per part [MPa].
 
+    `distance` [mm] is where stresses beside a corner are read; a tenth of the thinner adjoining wall when None.
     Source of the exponents: xsec_fem.theory.corner_exponent.
     """
     start, angle = _sector_directions(mesh)
@@ -116,7 +124,7 @@ def find_corners(mesh: Mesh, edges: Edges, G: FloatArray) -> tuple[Corner, ...]:
         for first in uses[leaves_free.ravel()[uses]]:
             corner = _corner_of_fan(mesh, G, (start, angle), _fan(mesh, edges, int(first)), segments)
             if corner is not None:
-                found.append(corner)
+                found.append(corner if distance is None else replace(corner, distance=distance))
     return tuple(sorted(found, key=lambda corner: (corner.y, corner.z)))
 
 
@@ -169,5 +177,5 @@ def _corner_of_fan(
     wall = _wall(place, (first, direction), segments)
     return Corner(
         float(place[0]), float(place[1]), float(np.degrees(direction - first)), exponent, tuple(parts), wall,
-        SHARE_OF_WALL * wall, (first, direction),
+        SHARE_OF_WALL * wall, tuple(wedge), int(mesh.part_of[fan[0][0]]),
     )  # fmt: skip

@@ -56,11 +56,13 @@ class Samples:
     elements : (K,) triangle of each point.
     values : (K, n) basis functions there.
     places : (K, 2) the points in the file's axes [mm].
+    corner : (K,) number of the singular corner a point belongs to, -1 for none.
     """
 
     elements: IntArray
     values: FloatArray
     places: FloatArray
+    corner: IntArray
 
 
 @dataclass(frozen=True)
@@ -91,8 +93,8 @@ class Readings:
 
 def corner_rings(mesh: Mesh, corners: Sequence[Corner]) -> Samples:
     """Return the points inside the material on the circles of the stated distance round all singular corners."""
-    elements, values, places = [], [], []
-    for corner in corners:
+    elements, values, places, owner = [], [], [], []
+    for number, corner in enumerate(corners):
         first, last = corner.directions
         for angle in first + (last - first) * np.linspace(0.0, 1.0, _ARC):
             place = (corner.y + corner.distance * np.cos(angle), corner.z + corner.distance * np.sin(angle))
@@ -100,9 +102,12 @@ def corner_rings(mesh: Mesh, corners: Sequence[Corner]) -> Samples:
             elements.append(found)
             values.append(mesh.element.values(reference))
             places.append(np.tile(place, (len(found), 1)))
+            owner.append(np.full(len(found), number))
     if not elements:
-        return Samples(np.zeros(0, np.int64), np.zeros((0, mesh.triangles.shape[1])), np.zeros((0, 2)))
-    return Samples(np.concatenate(elements), np.vstack(values), np.vstack(places))
+        return Samples(
+            np.zeros(0, np.int64), np.zeros((0, mesh.triangles.shape[1])), np.zeros((0, 2)), np.zeros(0, np.int64)
+        )
+    return Samples(np.concatenate(elements), np.vstack(values), np.vstack(places), np.concatenate(owner))
 
 
 def largest_by_part(
@@ -130,6 +135,14 @@ def largest_by_part(
     return tuple(result)
 
 
+def read_beside_corners(field: StressField, rings: Samples, count: int) -> FloatArray:
+    """Return the largest |tau| on the circle round each of the `count` corners, (count,) [MPa]; NaN where no point lies inside."""
+    tau = _read(field, rings).measure("tau")
+    largest = np.full(count, -np.inf)
+    np.maximum.at(largest, rings.corner, tau)
+    return np.where(np.isfinite(largest), largest, np.nan)
+
+
 def _read(field: StressField, samples: Samples) -> Readings:
     """Interpolate the nodal stresses of each sample's own part."""
     nodes = field.part_nodes.triangles[samples.elements]
@@ -149,5 +162,6 @@ def _between_nodes(field: StressField, part: int, corners: Sequence[Corner], wha
     tops = mine[np.argsort(size[numbering.triangles[mine]].max(axis=1))[::-1][:_TRIANGLES]]
     table = mesh.element.values(lattice(_FINE) / _FINE)
     places = (table @ mesh.nodes[mesh.triangles[tops]]).reshape(-1, 2)
-    samples = Samples(np.repeat(tops, len(table)), np.tile(table, (len(tops), 1)), places)
+    nowhere = np.full(len(places), -1)
+    samples = Samples(np.repeat(tops, len(table)), np.tile(table, (len(tops), 1)), places, nowhere)
     return _read(field, samples).chosen(corner_mask(places, corners))

@@ -71,3 +71,46 @@ def wedge_exponent(sectors: Sequence[Sector]) -> float:
         middle = (low + high) / 2
         low, high = (middle, high) if phase(middle) < np.pi else (low, middle)
     return (low + high) / 2
+
+
+@dataclass(frozen=True)
+class WedgeMode:
+    """The singular mode u = r^lam phi(angle) of a wedge of isotropic sectors, phi scaled to 1 on the first free side.
+
+    In sector k, with angle b from its start, phi = cosine[k] cos(lam b) + sine[k] sin(lam b).
+    """
+
+    sectors: tuple[Sector, ...]
+    lam: float
+    cosine: FloatArray
+    sine: FloatArray
+
+    def values(self, sector: int, angles: FloatArray) -> FloatArray:
+        """Return phi at angles (n,) measured from +y [rad] inside one sector, shape (n,). Source: Williams 1952."""
+        b = self.lam * (angles - self.sectors[sector].start)
+        result: FloatArray = self.cosine[sector] * np.cos(b) + self.sine[sector] * np.sin(b)
+        return result
+
+    @property
+    def steepness(self) -> float:
+        """Largest G |grad u| r^(1 - lam) of the mode [MPa]: the same all over one sector. Source: Williams 1952."""
+        g = np.array([sector.G[0, 0] for sector in self.sectors])
+        return float((g * self.lam * np.hypot(self.cosine, self.sine)).max())
+
+
+def wedge_mode(sectors: Sequence[Sector], lam: float) -> WedgeMode | None:
+    """Return the mode of the exponent lam, (n,) coefficients, or None when a sector is not isotropic (G in MPa).
+
+    Source: Williams 1952 (module docstring).
+    """
+    if any(not np.allclose(sector.G, sector.G[0, 0] * np.eye(2), rtol=1e-12) for sector in sectors):
+        return None
+    u, w = 1.0, 0.0
+    cosine, sine = [], []
+    for sector in sectors:
+        g = sector.G[0, 0]
+        cosine.append(u)
+        sine.append(w / g)
+        c, s = np.cos(lam * sector.angle), np.sin(lam * sector.angle)
+        u, w = c * u + s * w / g, -g * s * u + c * w
+    return WedgeMode(tuple(sectors), lam, np.array(cosine), np.array(sine))
