@@ -7,8 +7,9 @@ import numpy as np
 from xsec_fem.errors import Fault, InputError
 from xsec_fem.fem.edges import Edges, connected_bodies
 from xsec_fem.fem.mesh import Mesh
-from xsec_fem.model.section import Section
-from xsec_fem.recovery.contacts import find_contacts
+from xsec_fem.model.section import Joint, Section
+from xsec_fem.recovery.contacts import find_contacts, find_slits
+from xsec_fem.recovery.joint_sides import declared_joint
 from xsec_fem.results import Contact
 
 
@@ -20,6 +21,9 @@ def require_one_body(section: Section, mesh: Mesh, edges: Edges) -> None:
         return
     bodies = [sorted({mesh.part_names[part] for part in np.unique(mesh.part_of[body == k])}) for k in range(count)]
     text = " | ".join(", ".join(names) for names in bodies)
+    causes = [joint.name for joint in section.joints if joint.is_slit and _parts_bodies(joint, bodies)]
+    if causes:
+        text += f"; held together only by the faces that {' and '.join(repr(name) for name in causes)} lets slide"
     raise InputError(
         [
             Fault(
@@ -33,14 +37,23 @@ def require_one_body(section: Section, mesh: Mesh, edges: Edges) -> None:
     )
 
 
+def _parts_bodies(joint: Joint, bodies: list[list[str]]) -> bool:
+    """True when the joint's two sides lie in different bodies."""
+    where = [{k for k, names in enumerate(bodies) if set(names) & set(side)} for side in (joint.first, joint.second)]
+    return len(where[0] | where[1]) > 1
+
+
 def named_contacts(section: Section, mesh: Mesh, edges: Edges) -> tuple[Contact, ...]:
-    """Return the pairs of parts that touch, their length [mm] and the joint that claims the pair, if one does."""
-    result = []
-    for first, second, length in find_contacts(mesh, edges):
-        claims = (
-            joint.name
-            for joint in section.joints
-            if (first in joint.first and second in joint.second) or (second in joint.first and first in joint.second)
-        )
-        result.append(Contact((first, second), length, next(claims, None)))
-    return tuple(result)
+    """Return the pairs of parts that touch, their length [mm], its unbonded share, and the joint that claims the pair."""
+    bonded = {(first, second): length for first, second, length in find_contacts(mesh, edges)}
+    slit = find_slits(mesh, edges)
+    pairs = [
+        (first, second)
+        for k, first in enumerate(mesh.part_names)
+        for second in mesh.part_names[k + 1 :]
+        if (first, second) in bonded or (first, second) in slit
+    ]
+    return tuple(
+        Contact(pair, bonded.get(pair, 0.0) + slit.get(pair, 0.0), declared_joint(section, pair), slit.get(pair, 0.0))
+        for pair in pairs
+    )

@@ -1,8 +1,8 @@
 """Evidence: the section solved on a series of meshes, each with the bounds that hold on it.
 
 A drawn section is meshed with the sizes of the solved mesh times 4, 2.8, 2, 1.4 and 1; a mesh from a file keeps its triangles
-and takes the degrees 1 to 5. The error falls like N^(-p/2) where the field is smooth (N nodes, degree p), so that the observed order
--2 d log(error)/d log(N) tends to p: B. Szabo, I. Babuska, Finite Element Analysis, 1991, ch. 4.
+and takes the degrees 1 to 5. The error falls like N^(-p/2) where the field is smooth (N nodes, degree p), so that the
+observed order -2 d log(error)/d log(N) tends to p: B. Szabo, I. Babuska, Finite Element Analysis, 1991, ch. 4.
 """
 
 from __future__ import annotations
@@ -51,7 +51,7 @@ def convergence(result: Result) -> tuple[ConvergenceRow, ...]:
                 certificate.IT,
                 properties.Asz,
                 certificate.Asz,
-            )  # fmt: skip
+            )
         )
     return tuple(rows)
 

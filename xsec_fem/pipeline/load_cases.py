@@ -12,7 +12,8 @@ import numpy.typing as npt
 from xsec_fem.errors import Fault, InputError
 from xsec_fem.model.section import Actions, Section
 from xsec_fem.recovery.corners import Corner
-from xsec_fem.recovery.joints import JointFlows, joint_result
+from xsec_fem.recovery.joint_results import joint_result
+from xsec_fem.recovery.joints import JointFlows
 from xsec_fem.recovery.largest import Samples, largest_by_part, read_beside_corners
 from xsec_fem.recovery.section_forces import reduce_actions
 from xsec_fem.recovery.stress_field import SectionForces, StressField, UnitFields
@@ -73,7 +74,12 @@ def _known(value: float) -> float | None:
 
 
 def _utilisation(section: Section, part: str, tau: float, von_mises: float) -> float | None:
-    """Larger of tau over the shear strength and von Mises over the strength; None without either."""
+    """Larger of tau over the shear strength and von Mises over the strength; None without either.
+
+    None for a weld bead: it is judged on its throat, by its joint. Beside its root every stress grows without limit.
+    """
+    if section.part(part).bead_of is not None:
+        return None
     material = section.materials[section.part(part).material]
     ratios = []
     if material.shear_strength is not None:

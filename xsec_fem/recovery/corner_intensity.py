@@ -1,8 +1,8 @@
 """How strong the singular stress at a corner is: |tau| -> K r^exponent, with K under unit actions.
 
 Near the corner u = (linear function) + A r^lam phi + weaker terms. The linear function balances the prescribed strain at
-the corner; what is left is projected on phi over a circle, g du weighted: the other modes of the wedge are orthogonal to it, so that A is
-found to the order of the smooth rest, r^(2 - lam). K = A times the mode's steepness.
+the corner; what is left is projected on phi over a circle, weighted with g: the other modes of the wedge are orthogonal
+to it, so that A is found to the order of the smooth rest, r^(2 - lam). K = A times the mode's steepness.
 Source of the modes: xsec_fem.theory.corner_exponent; the projection was derived here (Sturm-Liouville orthogonality in the angle).
 """
 
