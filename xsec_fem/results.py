@@ -18,7 +18,7 @@ import numpy.typing as npt
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Actions, Section
 from xsec_fem.recovery.corners import Corner, corner_mask
-from xsec_fem.recovery.joints import JointResult
+from xsec_fem.recovery.joint_results import JointResult
 from xsec_fem.recovery.largest import Largest
 from xsec_fem.recovery.section_forces import reduce_actions
 from xsec_fem.recovery.stress_field import PointStress, SectionForces, StressField, UnitFields
@@ -121,11 +121,15 @@ class ConvergenceRow:
 
 @dataclass(frozen=True)
 class Contact:
-    """Two parts that touch along `length` [mm]; `joint` names the declared joint, None when they are simply one solid."""
+    """Two parts that touch along `length` [mm]; `joint` names the declared joint, None when they are simply one solid.
+
+    `slit` is how much of that length is a slit, where the faces slide on each other [mm].
+    """
 
     parts: tuple[str, str]
     length: float
     joint: str | None = None
+    slit: float = 0.0
 
 
 @dataclass(frozen=True)

@@ -9,6 +9,7 @@ from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.file_mesh import read_regions
 from xsec_fem.meshing.gmsh_mesher import mesh_section
 from xsec_fem.meshing.mesh_files import write_mesh_file
+from xsec_fem.meshing.sizing import SizeField
 from xsec_fem.meshing.slit_joints import joint_vertices, open_joints
 from xsec_fem.model.outline import Point
 from xsec_fem.model.section import Section
@@ -16,19 +17,24 @@ from xsec_fem.model.section import Section
 DEFAULT_ORDER = 4
 
 
-def make_mesh(section: Section, split_points: Sequence[Point] = ()) -> Mesh:
-    """Return the first mesh of the section, and write it to `section.solve.mesh_file` when that is set.
+def refinable(section: Section) -> bool:
+    """Return True when the section is drawn, so that a finer mesh of it can be made."""
+    return all(part.face is not None for part in section.parts)
+
+
+def make_mesh(section: Section, split_points: Sequence[Point] = (), sizes: SizeField | None = None) -> Mesh:
+    """Return the mesh of the section, and write it to `section.solve.mesh_file` when that is set.
 
     The order is the one in [solve], else that of the mesh file when above 1, else 4. `split_points` become nodes of a
-    drawn section. Raises InputError, MeshingError, MissingLibraryError.
+    drawn section; `sizes` are wished element sizes [mm], those of a first mesh when None. Raises InputError, MeshingError, MissingLibraryError.
     """
-    mesh = open_joints(section, _mesh_of(section, [*split_points, *joint_vertices(section)]))
+    mesh = open_joints(section, _mesh_of(section, [*split_points, *joint_vertices(section)], sizes))
     if section.solve.mesh_file is not None:
         write_mesh_file(section.solve.mesh_file, mesh)
     return mesh
 
 
-def _mesh_of(section: Section, split_points: Sequence[Point]) -> Mesh:
+def _mesh_of(section: Section, split_points: Sequence[Point], sizes: SizeField | None) -> Mesh:
     if not section.parts:
         raise InputError([Fault(str(section.path or ""), "parts", "must hold at least one part", "none")])
     from_file = [part for part in section.parts if part.mesh_region is not None]
@@ -41,4 +47,4 @@ def _mesh_of(section: Section, split_points: Sequence[Point]) -> Mesh:
         raise InputError([Fault(str(section.path or ""), "parts", rule, None, remedy)])
     if from_file and not any(part.mesh_region.path.suffix.lower() == ".geo" for part in from_file if part.mesh_region):
         return read_regions(section, section.solve.order, DEFAULT_ORDER)
-    return mesh_section(section, section.solve.order or DEFAULT_ORDER, split_points=split_points)
+    return mesh_section(section, section.solve.order or DEFAULT_ORDER, sizes, split_points)

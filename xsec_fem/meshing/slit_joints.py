@@ -9,13 +9,12 @@ from xsec_fem.errors import MeshingError
 from xsec_fem.fem.edges import Edges, edges_between, mesh_edges
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.fem.slits import open_slits
+from xsec_fem.fem.strip_edges import strip_edges
 from xsec_fem.model.outline import Point
 from xsec_fem.model.section import Joint, Section
 
-FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
 
-_ON_LINE = 1e-5  # of the section's size: a point nearer to a strip's line lies on it
 _FILLED = (
     1e-3  # share of a strip by which its edges may be longer or shorter: the mesher closes gaps of 1e-6 of the size
 )
@@ -24,23 +23,6 @@ _FILLED = (
 def joint_vertices(section: Section) -> tuple[Point, ...]:
     """Return the points of the faying lines where the mesh needs a node: ends of slits and of bonded strips [mm]."""
     return tuple(point for joint in section.joints for point in joint.vertices)
-
-
-def on_strip(points: FloatArray, strip: tuple[Point, Point], size: float) -> npt.NDArray[np.bool_]:
-    """Return True (K,) for points (K, 2) on the straight strip between two points; `size` of the section [mm]."""
-    start, along = np.array(strip[0]), np.subtract(strip[1], strip[0])
-    length = float(np.hypot(*along))
-    y, z = (points - start).T
-    share, off = (y * along[0] + z * along[1]) / length**2, np.abs(y * along[1] - z * along[0]) / length
-    result: npt.NDArray[np.bool_] = (share > 0) & (share < 1) & (off < _ON_LINE * size)
-    return result
-
-
-def strip_edges(mesh: Mesh, edges: Edges, chosen: IntArray, strip: tuple[Point, Point]) -> IntArray:
-    """Return those of the chosen edges (K,) whose middle lies on the straight strip between two points."""
-    middle = mesh.nodes[edges.corners[chosen]].mean(axis=1)
-    found: IntArray = chosen[on_strip(middle, strip, float(np.ptp(mesh.nodes, axis=0).max()))]
-    return found
 
 
 def open_joints(section: Section, mesh: Mesh) -> Mesh:

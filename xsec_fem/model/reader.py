@@ -125,7 +125,7 @@ def _read_solve(table: object, folder: Path, sources: Sequence[Path], faults: Fa
     mesh_file = None
     if read.mesh_file is not None:
         mesh_file = mesh_output(read.mesh_file, folder, sources, "solve: mesh_file", faults)
-    return SolveSettings(read.accuracy, read.order, read.nu_effect, mesh_file)
+    return SolveSettings(read.accuracy, read.order, read.nu_effect, mesh_file, read.corner_distance, read.try_radius)
 
 
 def _without_idle_grain(part: Part, materials: Mapping[str, Material]) -> Part:

@@ -247,3 +247,9 @@ class SolveTable(Table):
     mesh_file: Annotated[str, Strict()] | None = Field(
         None, description="Give where to keep the mesh, a .msh or .vtu seen from the section file."
     )
+    corner_distance: Annotated[float, Strict(), Field(allow_inf_nan=False, gt=0)] | None = Field(
+        None, description="Give the distance from a sharp corner at which stresses are read."
+    )
+    try_radius: Annotated[float, Strict(), Field(allow_inf_nan=False, gt=0)] | None = Field(
+        None, description="Give the root radius to try in all sharp re-entrant corners."
+    )

@@ -116,12 +116,16 @@ class Bond:
     strip : ends of the stretch of the faying line that stays bonded (row, penetration); None without one.
     bead : name of the bead's part.
     throat : from the root to the nearest point of the bead's surface.
+    leg : length of the bead's legs [mm].
+    angle_deg : angle between the fusion faces.
     """
 
     name: str
     strip: tuple[Point, Point] | None = None
     bead: str | None = None
     throat: tuple[Point, Point] | None = None
+    leg: float | None = None
+    angle_deg: float | None = None
 
 
 @dataclass(frozen=True)
@@ -185,12 +189,18 @@ class Actions:
 
 @dataclass(frozen=True)
 class SolveSettings:
-    """The [solve] table. `order` None: 4, or that of the parts' mesh file when above 1; `mesh_file`: where to keep it."""
+    """The [solve] table. `order` None: 4, or that of the parts' mesh file when above 1; `mesh_file`: where to keep it.
+
+    `corner_distance` [mm] from sharp corners at which stresses are read, None for a tenth of the wall; `try_radius` [mm] is
+    a root radius to solve again with.
+    """
 
     accuracy: float = 0.01
     order: int | None = None
     nu_effect: bool = True
     mesh_file: Path | None = None
+    corner_distance: float | None = None
+    try_radius: float | None = None
 
 
 @dataclass(frozen=True)

@@ -160,7 +160,7 @@ def _bead(joint: Joint, end: FreeEnd, short_name: str, name: str, parts: Mapping
     part = Part(name, weld.material or side.material, "weld bead", Face(polygon_loop(corners)), bead_of=joint.name)
     if weld.material is None:
         part = replace(part, grain_angle=side.grain_angle)
-    bond = Bond(short_name, strip, name, (root, _nearest(root, *toes)))
+    bond = Bond(short_name, strip, name, (root, _nearest(root, *toes)), leg, math.degrees(end.phi))
     return Bead(part, bond, (root,) if depth else ())
 
 

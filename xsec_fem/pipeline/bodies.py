@@ -9,7 +9,7 @@ from xsec_fem.fem.edges import Edges, connected_bodies
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Joint, Section
 from xsec_fem.recovery.contacts import find_contacts, find_slits
-from xsec_fem.recovery.joint_sides import declared_joint
+from xsec_fem.recovery.joint_sides import Connections
 from xsec_fem.results import Contact
 
 
@@ -46,7 +46,7 @@ def _parts_bodies(joint: Joint, bodies: list[list[str]]) -> bool:
 def named_contacts(section: Section, mesh: Mesh, edges: Edges) -> tuple[Contact, ...]:
     """Return the pairs of parts that touch, their length [mm], its unbonded share, and the joint that claims the pair."""
     bonded = {(first, second): length for first, second, length in find_contacts(mesh, edges)}
-    slit = find_slits(mesh, edges)
+    slit, connections = find_slits(mesh, edges), Connections.of(section)
     pairs = [
         (first, second)
         for k, first in enumerate(mesh.part_names)
@@ -54,6 +54,6 @@ def named_contacts(section: Section, mesh: Mesh, edges: Edges) -> tuple[Contact,
         if (first, second) in bonded or (first, second) in slit
     ]
     return tuple(
-        Contact(pair, bonded.get(pair, 0.0) + slit.get(pair, 0.0), declared_joint(section, pair), slit.get(pair, 0.0))
+        Contact(pair, bonded.get(pair, 0.0) + slit.get(pair, 0.0), connections.joint_between(pair), slit.get(pair, 0.0))
         for pair in pairs
     )

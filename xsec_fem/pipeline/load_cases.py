@@ -52,7 +52,7 @@ def solve_case(section: Section, actions: Actions, unit: Recovered) -> CaseResul
         PartResult(tau.part, tau, von_mises, _utilisation(section, tau.part, tau.value, von_mises.value))
         for tau, von_mises in zip(shear, equivalent, strict=True)
     )
-    joints = tuple(joint_result(flow, unit.fields, forces, unit.corners) for flow in unit.flows)
+    joints = tuple(joint_result(flow, forces, unit.corners) for flow in unit.flows)
     probes = probe_results(section, stress)
     return CaseResult(
         actions.name, actions, forces, stress, parts, joints, probes, corner_readings(stress, forces, unit)

@@ -26,7 +26,8 @@ from xsec_fem.pipeline.load_cases import Recovered, solve_case
 from xsec_fem.pipeline.solution import Solution, solve_mesh
 from xsec_fem.pipeline.stopwatch import Stopwatch
 from xsec_fem.recovery.corner_intensity import corner_intensities
-from xsec_fem.recovery.joints import all_joint_flows
+from xsec_fem.recovery.joint_sides import Connections
+from xsec_fem.recovery.joints import joint_flows
 from xsec_fem.recovery.largest import corner_rings
 from xsec_fem.recovery.stress_field import unit_fields
 from xsec_fem.results import MeshStep, Result
@@ -80,7 +81,7 @@ def recover(section: Section, solution: Solution, steps: tuple[MeshStep, ...], w
         properties = section_properties(section, solution)
         fields = unit_fields(warping, solution.stiffness)  # 8
         contacts = named_contacts(section, mesh, edges)  # 9
-        flows = all_joint_flows(section, warping, solution.stiffness, fields, edges, corners)
+        flows = joint_flows(Connections.of(section), warping, solution.stiffness, fields, edges, corners)
         rings, intensities = corner_rings(mesh, corners), corner_intensities(warping, solution.stiffness, corners)
         unit = Recovered(fields, properties, corners, rings, intensities, flows)
         cases = tuple(solve_case(section, actions, unit) for actions in section.actions)  # 10

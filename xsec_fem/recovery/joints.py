@@ -1,28 +1,29 @@
-"""Flow through a joint between two groups of parts, by equilibrium, and the shear stress along it.
+"""Flow through a joint between two groups of parts, by equilibrium, bond by bond, under unit actions.
 
-For the parts A of the first side, r_i = ∫_A (tau_h . grad v_i - E f v_i) vanishes at A's inner nodes (the field satisfies just
-these equations) and gives on its interfaces the consistent nodal values of tau . n. Their sum over a joint that separates A is
--∫_A E f to round-off on any mesh. Where A has several interfaces, the traction is spread over them with the interfaces' own mass
-matrix. The flow is positive along +x on the part named first.
+For the material A on the joint's first side, r_i = ∫_A (tau_h . grad v_i - E f v_i) vanishes at A's inner nodes (the field
+satisfies just these equations) and gives on its interfaces the consistent nodal values of tau . n. Their sum over a joint that
+separates A is -∫_A E f to round-off on any mesh. Where A has several interfaces, or a joint several bonds, the traction is spread
+over them with the interfaces' own mass matrix. The flow is positive along +x on the part named first.
 """
 
 from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-from typing import Any
 
 import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.fem.assembly import add_at_nodes, element_loads
-from xsec_fem.fem.edge_integrals import edge_mass_matrix, edge_nodes, edge_weights
-from xsec_fem.fem.edges import Edges, connected_bodies
+from xsec_fem.fem.edge_integrals import edge_lengths, edge_mass_matrix, edge_nodes, edge_weights
+from xsec_fem.fem.edges import Edges
 from xsec_fem.fem.mapping import batches
-from xsec_fem.fem.mesh import Mesh
+from xsec_fem.fem.slits import facing_edges
 from xsec_fem.model.section import Joint
-from xsec_fem.recovery.corners import Corner, corner_mask
-from xsec_fem.recovery.stress_field import SectionForces, UnitFields
+from xsec_fem.recovery.corners import Corner
+from xsec_fem.recovery.joint_lines import BondLine, bond_lines
+from xsec_fem.recovery.joint_sides import Connections, JointSide, joint_side
+from xsec_fem.recovery.stress_field import UnitFields
 from xsec_fem.theory.stiffness import ShearStiffness
 from xsec_fem.theory.warping import POISSON, SHEAR, TORSION, Warping
 
@@ -32,72 +33,113 @@ IntArray = npt.NDArray[np.int64]
 
 @dataclass(frozen=True)
 class JointFlows:
-    """A joint's flow under unit Vy, Vz (through the shear centre) and T, before any load case.
+    """A joint's flows under unit Vy, Vz (through the shear centre) and T, before any load case.
 
     Attributes
     ----------
-    name, kind, strength : as declared; strength [MPa].
-    width : length of the joint's line in the section [mm].
-    flow : (3,) force per length of beam [N/mm per N, per N mm].
-    separated : (3,) -∫_A E f, which the flow equals where the joint alone separates the first side ("V S/I").
-    separates : True when the joint alone separates the section in two.
-    nodes : numbers of the pairs (node, part) of both sides along the joint, (2, K), and their normals out of the first side (K, 2).
+    joint : as declared.
+    bonds : what carries: the whole line of a glue joint, the beads of a weld, the rows of fasteners; none of contact.
+    flows : (B, 3) flow of each bond [N/mm per N, per N mm].
+    slit : length of the faying faces that slide on each other [mm].
+    separated : (3,) -∫_A E f of the side that is cut off: "V S/I".
+    shared_with : other joints and contacts among which V S/I is shared; empty when the joint separates the section.
+    size : of the section, tells round-off from flow [mm].
     """
 
-    name: str
-    kind: str
-    strength: float | None
-    width: float
-    flow: FloatArray
+    joint: Joint
+    bonds: tuple[BondLine, ...]
+    flows: FloatArray
+    slit: float
     separated: FloatArray
-    separates: bool
-    nodes: IntArray
-    normals: FloatArray
+    shared_with: tuple[str, ...]
+    size: float
+
+    @property
+    def flow(self) -> FloatArray:
+        """(3,) flow of the whole joint [N/mm per N, per N mm]."""
+        total: FloatArray = self.flows.sum(axis=0)
+        return total
+
+    @property
+    def separates(self) -> bool:
+        """True when the joint alone separates the section."""
+        return not self.shared_with
 
 
 @dataclass(frozen=True)
-class JointResult:
-    """A joint under one load case.
+class ElementForces:
+    """What each triangle takes part in equilibrium with, for the five problems.
 
-    flow and by_hand (V S/I of the first side) [force per length]; mean, peak [stress] and the peak's place; demand is the
-    mean against the strength for glue; capacity and utilisation None without a strength.
+    Attributes
+    ----------
+    nodal : (M, n, 5) ∫ (tau . grad v_i - E f v_i) over the triangle.
+    supply : (M, 5) -∫ E f over it.
     """
 
-    name: str
-    kind: str
-    width: float
-    flow: float
-    by_hand: float
-    separates: bool
-    mean: float
-    peak: float
-    peak_at: tuple[float, float]
-    demand: float
-    capacity: float | None = None
-
-    @property
-    def utilisation(self) -> float | None:
-        """Demand over capacity; None without a capacity."""
-        return None if self.capacity is None else self.demand / self.capacity
-
-    def to_dict(self) -> dict[str, Any]:
-        """Return the entry of results.json; keys without a value are left out."""
-        entry = {
-            "name": self.name, "kind": self.kind, "width": self.width, "flow": self.flow, "by_hand": self.by_hand,
-            "separates": self.separates, "mean": self.mean, "peak": self.peak, "peak_at": list(self.peak_at),
-            "demand": self.demand, "capacity": self.capacity, "utilisation": self.utilisation,
-        }  # fmt: skip
-        return {key: value for key, value in entry.items() if value is not None}
+    nodal: FloatArray
+    supply: FloatArray
 
 
-def interface_edges(mesh: Mesh, edges: Edges, first: Sequence[str], second: Sequence[str]) -> IntArray:
-    """Return the edges (K,) shared by a triangle of a part in `first` and one of a part in `second`."""
-    sides = edges.triangles
-    inner = np.flatnonzero(sides[:, 1] >= 0)
-    numbers = [np.array([mesh.part_names.index(name) for name in side]) for side in (first, second)]
-    a, b = mesh.part_of[sides[inner, 0]], mesh.part_of[sides[inner, 1]]
-    across = (np.isin(a, numbers[0]) & np.isin(b, numbers[1])) | (np.isin(a, numbers[1]) & np.isin(b, numbers[0]))
-    return inner[across]
+def element_forces(warping: Warping) -> ElementForces:
+    """Integrate over every triangle once, (M, n, 5) and (M, 5) [N per unit action or twist]. Source: weak form of
+    xsec_fem.theory.warping."""
+    problem = warping.problem
+    count = warping.functions.shape[1]
+    nodal, supply = np.zeros((*problem.mesh.triangles.shape, count)), np.zeros((len(problem.mesh.triangles), count))
+    for batch in batches(problem.mesh):
+        scalar = np.zeros((*batch.points.shape[:2], count))
+        scalar[..., SHEAR] = -problem.moduli.E[batch.part][:, None, None] * (problem.position(batch) @ problem.a.T)
+        nodal[batch.elements] = element_loads(batch, scalar, warping.stresses(batch))
+        supply[batch.elements] = np.einsum("mq,mqk->mk", batch.weights, scalar)
+    return ElementForces(nodal, supply)
+
+
+def joint_flows(
+    connections: Connections,
+    warping: Warping,
+    stiffness: ShearStiffness,
+    fields: UnitFields,
+    edges: Edges,
+    corners: Sequence[Corner] = (),
+) -> list[JointFlows]:
+    """Return the flows of all joints under unit actions, (B, 3) arrays [N/mm per N, per N mm].
+
+    Stresses of welds are read outside the stated distance of `corners`. Raises ValueError when the mesh does not fit a joint:
+    its sides share no edge, or a slit is not open.
+    """
+    if not connections.joints:
+        return []
+    forces = element_forces(warping)
+    return [_flows(connections, joint, forces, stiffness, fields, edges, corners) for joint in connections.joints]
+
+
+def _flows(
+    connections: Connections, joint: Joint, forces: ElementForces, stiffness: ShearStiffness, fields: UnitFields,
+    edges: Edges, corners: Sequence[Corner],
+) -> JointFlows:  # fmt: skip
+    mesh = fields.part_nodes.mesh
+    slit, size = _slit_length(fields, edges, joint), float(np.ptp(mesh.nodes, axis=0).max())
+    side = joint_side(connections, mesh, edges, joint, forces.supply[:, SHEAR])
+    bonds = tuple(bond_lines(joint, fields, edges, side.inside, corners))
+    if not bonds:
+        return JointFlows(joint, (), np.zeros((0, 3)), slit, np.zeros(3), (), size)
+    weights = np.stack([edge_weights(mesh, edges, bond.edges)[0] for bond in bonds])
+    flows = _unit_columns(_tractions(forces, fields, edges, side, weights), stiffness)
+    separated = _unit_columns(forces.supply[side.inside].sum(axis=0)[None], stiffness)[0]
+    return JointFlows(joint, bonds, flows, slit, separated, side.shared_with, size)
+
+
+def _tractions(
+    forces: ElementForces, fields: UnitFields, edges: Edges, side: JointSide, weights: FloatArray
+) -> FloatArray:
+    """∫ tau . n over the bonds, whose nodal weights are (B, N): (B, 5)."""
+    mesh = fields.part_nodes.mesh
+    residual = np.zeros((len(mesh.nodes), forces.supply.shape[1]))
+    add_at_nodes(residual, mesh.triangles[side.inside], forces.nodal[side.inside])
+    nodes = np.unique(edge_nodes(mesh, edges, side.line))
+    traction = np.linalg.solve(edge_mass_matrix(mesh, edges, side.line, nodes), residual[nodes])
+    result: FloatArray = weights[:, nodes] @ traction
+    return result
 
 
 def _unit_columns(values: FloatArray, stiffness: ShearStiffness) -> FloatArray:
@@ -105,103 +147,13 @@ def _unit_columns(values: FloatArray, stiffness: ShearStiffness) -> FloatArray:
     return np.column_stack([values[:, SHEAR] + values[:, POISSON], values[:, TORSION] / stiffness.GIT])
 
 
-def _residual_of(warping: Warping, inside: npt.NDArray[np.bool_]) -> tuple[FloatArray, FloatArray]:
-    """Nodal r (N, 5) of the triangles inside (M,), and -∫ E f over them (5,)."""
-    problem = warping.problem
-    residual, supply = np.zeros_like(warping.functions), np.zeros(warping.functions.shape[1])
-    for batch in batches(problem.mesh):
-        mine = inside[batch.elements]
-        if not mine.any():
-            continue
-        scalar = np.zeros((*batch.points.shape[:2], len(supply)))
-        scalar[..., SHEAR] = -problem.moduli.E[batch.part][:, None, None] * (problem.position(batch) @ problem.a.T)
-        values = element_loads(batch, scalar, warping.stresses(batch))
-        add_at_nodes(residual, batch.nodes[mine], values[mine])
-        supply += np.einsum("mq,mqk->k", batch.weights[mine], scalar[mine])
-    return residual, supply
-
-
-def _first_side(mesh: Mesh, edges: Edges, own: IntArray, first: IntArray) -> tuple[npt.NDArray[np.bool_], bool]:
-    """Triangles (M,) on the first side of the joint, and True when the joint alone separates the section.
-
-    Where it does, everything that hangs on the first side belongs to it; where it does not, the named parts only.
-    """
-    body = connected_bodies(mesh, edges, without=own)
-    named = np.isin(mesh.part_of, first)
-    here = np.unique(body[edges.triangles[own][named[edges.triangles[own]]]])
-    there = np.unique(body[edges.triangles[own][~named[edges.triangles[own]]]])
-    if np.intersect1d(here, there).size:
-        return named, False
-    return np.isin(body, here), True
-
-
-def _boundary_between(edges: Edges, inside: npt.NDArray[np.bool_]) -> IntArray:
-    """Edges with one triangle inside and one outside."""
-    inner = np.flatnonzero(edges.triangles[:, 1] >= 0)
-    sides = inside[edges.triangles[inner]]
-    between: IntArray = inner[sides[:, 0] != sides[:, 1]]
-    return between
-
-
-def joint_flows(
-    warping: Warping, stiffness: ShearStiffness, fields: UnitFields, edges: Edges, joint: Joint
-) -> JointFlows:
-    """Return the flow of one joint under unit actions, (3,) arrays [N/mm per N, per N mm].
-
-    Raises ValueError when the two sides do not touch; the message names the joint.
-    """
-    mesh = warping.problem.mesh
-    own = interface_edges(mesh, edges, joint.first, joint.second)
-    if not len(own):
-        raise ValueError(f"joint {joint.name!r}: its sides {joint.first} and {joint.second} share no edge of the mesh")
-    numbers = np.array([mesh.part_names.index(part) for part in joint.first])
-    inside, separates = _first_side(mesh, edges, own, numbers)
-    residual, supply = _residual_of(warping, inside)
-    line = _boundary_between(edges, inside)
-    line_nodes = np.unique(edge_nodes(mesh, edges, line))
-    traction = np.linalg.solve(edge_mass_matrix(mesh, edges, line, line_nodes), residual[line_nodes])
-    weights, width = edge_weights(mesh, edges, own)
-    units = _unit_columns(np.vstack([weights[line_nodes] @ traction, supply]), stiffness)
-    nodes, normals = _joint_nodes(fields, edges, own, numbers)
-    return JointFlows(joint.name, joint.kind, joint.strength, width, units[0], units[1], separates, nodes, normals)
-
-
-def _joint_nodes(fields: UnitFields, edges: Edges, own: IntArray, first: IntArray) -> tuple[IntArray, FloatArray]:
-    """Pair numbers on both sides of the joint's edges (2, K) and normals out of the first side (K, 2)."""
-    numbering, mesh = fields.part_nodes, fields.part_nodes.mesh
-    sides = edges.triangles[own]
-    swap = ~np.isin(mesh.part_of[sides[:, 0]], first)
-    inner = np.where(swap, sides[:, 1], sides[:, 0])
-    outer = np.where(swap, sides[:, 0], sides[:, 1])
-    nodes, normals = edge_nodes(mesh, edges, own, of=inner, with_normals=True)
-    pairs = [_pair_numbers(numbering.triangles, mesh.triangles, triangles, nodes) for triangles in (inner, outer)]
-    return np.stack([pair.ravel() for pair in pairs]), normals.reshape(-1, 2)
-
-
-def _pair_numbers(pairs: IntArray, nodes: IntArray, triangles: IntArray, wanted: IntArray) -> IntArray:
-    """Pair number of each wanted node (K, p+1) inside its triangle (K,)."""
-    place = np.argmax(nodes[triangles][:, None, :] == wanted[:, :, None], axis=2)
-    return np.asarray(np.take_along_axis(pairs[triangles], place, axis=1))
-
-
-def joint_result(
-    flows: JointFlows, fields: UnitFields, forces: SectionForces, corners: Sequence[Corner]
-) -> JointResult:
-    """Return a joint's flow, mean, peak and utilisation under the given forces [N, N mm -> N/mm, MPa].
-
-    The peak is the largest |tau . n| at the nodes of the line, the mean of both sides, outside the stated distance of
-    singular corners.
-    """
-    unit = np.array([forces.Vy, forces.Vz, forces.T])
-    flow, by_hand = float(flows.flow @ unit), float(flows.separated @ unit)
-    tau = np.einsum("skd,k->sd", fields.tau[flows.nodes].mean(axis=0), unit)
-    normal = np.einsum("sd,sd->s", tau, flows.normals)
-    places = fields.part_nodes.positions[flows.nodes[0]]
-    clear = corner_mask(places, corners)
-    size = np.where(clear if clear.any() else True, np.abs(normal), -1.0)
-    top = int(np.argmax(size))
-    mean = flow / flows.width
-    return JointResult(
-        flows.name, flows.kind, flows.width, flow, by_hand, flows.separates, mean, float(normal[top]),
-        (float(places[top, 0]), float(places[top, 1])), abs(mean), flows.strength,
-    )  # fmt: skip
+def _slit_length(fields: UnitFields, edges: Edges, joint: Joint) -> float:
+    """Length of the free edges of the two sides that lie on each other."""
+    if not joint.is_slit:
+        return 0.0
+    mesh = fields.part_nodes.mesh
+    pairs = facing_edges(mesh, edges)
+    first, second = (np.array([name in names for name in mesh.part_names]) for names in (joint.first, joint.second))
+    a, b = (mesh.part_of[edges.triangles[pairs[:, k], 0]] for k in (0, 1))
+    mine = (first[a] & second[b]) | (second[a] & first[b])
+    return float(edge_lengths(mesh, edges, pairs[mine, 0]).sum())

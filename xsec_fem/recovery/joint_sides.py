@@ -1,0 +1,107 @@
+"""Which part of the section a joint cuts off, and with which other joints or contacts it shares that cut.
+
+A joint separates the section when nothing else connects its two sides: then V S/I of the separated part is its flow. Otherwise
+V S/I of whatever is cut off gives only the sum over all that the cut crosses.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, field
+
+import numpy as np
+import numpy.typing as npt
+
+from xsec_fem.fem.edges import Edges, connected_bodies, edges_round
+from xsec_fem.fem.mesh import Mesh
+from xsec_fem.model.section import Joint, Section
+
+FloatArray = npt.NDArray[np.float64]
+IntArray = npt.NDArray[np.int64]
+BoolArray = npt.NDArray[np.bool_]
+
+_EQUAL = 1e-9  # supplies nearer than this share are equal: the round-off of their sums
+
+
+@dataclass(frozen=True)
+class Connections:
+    """What holds the parts together: the joints, and the weld beads by the joint they belong to."""
+
+    joints: tuple[Joint, ...]
+    bead_of: Mapping[str, str] = field(default_factory=dict)
+
+    @classmethod
+    def of(cls, section: Section) -> Connections:
+        """Return those of a section."""
+        return cls(section.joints, {part.name: part.bead_of for part in section.parts if part.bead_of is not None})
+
+    def beads(self, joint: Joint) -> set[str]:
+        """Return the names of a joint's beads."""
+        return {bead for bead, name in self.bead_of.items() if name == joint.name}
+
+    def joint_between(self, pair: Iterable[str]) -> str | None:
+        """Return the joint that claims a pair of parts, or whose bead one of them is; None when they are one solid."""
+        names = set(pair)
+        for joint in self.joints:
+            one, other = ({*side, *self.beads(joint)} for side in (joint.first, joint.second))
+            if names & one and names & other and names <= one | other:
+                return joint.name
+        return None
+
+
+@dataclass(frozen=True)
+class JointSide:
+    """The material on the first side of a joint.
+
+    Attributes
+    ----------
+    inside : (M,) True for its triangles.
+    line : (K,) the edges of the mesh between it and the rest.
+    shared_with : the other joints and contacts that the line crosses; empty when the joint separates the section.
+    """
+
+    inside: BoolArray
+    line: IntArray
+    shared_with: tuple[str, ...]
+
+
+def joint_side(connections: Connections, mesh: Mesh, edges: Edges, joint: Joint, supply: FloatArray) -> JointSide:
+    """Return the side that the joint cuts off, of two candidates: what hangs on its first parts, or all that does not hang on
+    its second ones.
+
+    The one whose line crosses the fewest other connections is taken, then the one with the larger supply; `supply` (M, k) is
+    ∫ E f of each triangle for shear.
+    """
+    first = _triangles_of(mesh, joint.first)
+    second = _triangles_of(mesh, {*joint.second, *connections.beads(joint)})
+    masks = (_grown(mesh, edges, first, second), ~_grown(mesh, edges, second, first))
+    lines = [edges_round(edges, mask) for mask in masks]
+    sides = [
+        JointSide(mask, line, _others(connections, mesh, edges, joint, line))
+        for mask, line in zip(masks, lines, strict=True)
+    ]
+    here, there = (len(side.shared_with) for side in sides)
+    if here != there:
+        return sides[0 if here < there else 1]
+    size = [float(np.linalg.norm(supply[side.inside].sum(axis=0))) for side in sides]
+    return sides[0 if size[0] >= size[1] * (1 - _EQUAL) else 1]
+
+
+def _triangles_of(mesh: Mesh, names: Iterable[str]) -> BoolArray:
+    chosen = set(names)
+    result: BoolArray = np.array([name in chosen for name in mesh.part_names])[mesh.part_of]
+    return result
+
+
+def _grown(mesh: Mesh, edges: Edges, core: BoolArray, other: BoolArray) -> BoolArray:
+    """The core and all that hangs on it alone: what is cut off from `other` without it."""
+    body = connected_bodies(mesh, edges, without=edges_round(edges, core))
+    result: BoolArray = core | ~np.isin(body, np.unique(body[other]))
+    return result
+
+
+def _others(connections: Connections, mesh: Mesh, edges: Edges, joint: Joint, line: IntArray) -> tuple[str, ...]:
+    pairs = np.unique(np.sort(mesh.part_of[edges.triangles[line]], axis=1), axis=0)
+    parts = [(mesh.part_names[a], mesh.part_names[b]) for a, b in pairs]
+    names = [connections.joint_between(pair) or " | ".join(pair) for pair in parts]
+    return tuple(dict.fromkeys(name for name in names if name != joint.name))
