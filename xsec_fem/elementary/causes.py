@@ -221,7 +221,7 @@ def _radius(place: _Place) -> Cause | None:
     low, high = min(lengths), max(lengths)
     if max(high - place.t, place.t - low) <= _CHANGED * place.t:
         return None
-    what = "root radius or taper" if high < _JUNCTION * low else "one wall runs into another"
+    what = "root radius or taper" if high < _JUNCTION * low else "a junction or a sloping end"
     return Cause(
         "radius",
         f"The thickness changes from {_n(low)} to {_n(high)} within {_n(2 * step)} of {place.where} ({what}): the stress crowds "

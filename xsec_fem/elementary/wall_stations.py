@@ -2,7 +2,8 @@
 
 Named walls: evenly spaced stations, a thickness away from the ends (where walls meet) and from sharp bends. Other parts: evenly
 spaced level and upright lines through the part; what they cross within it counts as a wall when it is thin, at most an eighth
-of the part's extent, and thinner than what the other direction crosses at the same place. Solid parts have no walls.
+of the part's extent, far thinner than what the other direction crosses at the same place, and met by several lines: not the tip of
+a corner. Solid parts have no walls.
 """
 
 from __future__ import annotations
@@ -27,6 +28,8 @@ _THICKER = (
 _THIN = (
     1 / 8
 )  # of the part's extent along it: what is thinner counts as a wall (thin-wall theory; common practice, no source)
+_LONGER = 2.5  # what the other direction crosses over the thickness: a wall up to 20 deg off the axes has more
+_FEWEST = 5  # stations that make a thin place a wall
 
 
 @dataclass(frozen=True)
@@ -145,9 +148,9 @@ def _thin_places(solved: SolvedFields, part: str, count: int) -> list[CutWall]:
         spans = np.flatnonzero(own & (crossings.span_length <= _THIN * (high - low)[axis]))
         ends = crossings.span_start[spans] + crossings.span_end[spans]
         middle = crossings.point(crossings.span_line[spans], ends / 2)
-        thinner = crossings.span_length[spans] < _lengths_at(solved, np.eye(2)[1 - axis], middle)
+        thinner = _LONGER * crossings.span_length[spans] < _lengths_at(solved, np.eye(2)[1 - axis], middle)
         spans, middle = spans[thinner], middle[thinner]
-        if len(spans):
+        if len(spans) >= _FEWEST:
             cuts = WallCuts(crossings, spans, middle, crossings.span_line[spans])
             found.append(CutWall(f"{part}/{name}", part, None, (cuts,)))
     return found

@@ -50,10 +50,10 @@ def bracketed_roots(coefficients: FloatArray, low: FloatArray, high: FloatArray)
 
 
 def turning_points(coefficients: FloatArray) -> FloatArray:
-    """Return 0, the places in (0, 1) where the polynomials (K, p + 1) turn, and 1: sorted, shape (K, p + 1).
+    """Return 0, p - 1 places that include all in (0, 1) where the polynomials (K, p + 1) turn, and 1: sorted, (K, p + 1).
 
     Between neighbours each polynomial only grows or only falls. The roots of each derivative lie between those of the next one
-    (Rolle's theorem), so they are bracketed from the linear one down; places not needed repeat their right neighbour.
+    (Rolle's theorem), so they are bracketed from the linear one down; places not needed fall on turns of a derivative or an end.
     """
     count, degree = len(coefficients), coefficients.shape[1] - 1
     chain = [coefficients]

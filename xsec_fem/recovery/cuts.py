@@ -181,7 +181,7 @@ def place_cuts(solved: SolvedFields, cuts: Sequence[Cut], file: str = "") -> tup
         faults += [_ends_inside(crossings, int(span), (low, high), file, place) for span in partly]
         if not len(chosen) and not len(partly):
             value = f"from {list(cut.start)} to {list(cut.end)}"
-            remedy = "Move it, so that it runs through the section from free edge to free edge"
+            remedy = "Move it, so that it runs through the section from free edge to free edge."
             faults.append(Fault(file, place, "crosses no material", value, remedy))
         placed.append(PlacedCut(cut, crossings, chosen))
     if faults:
@@ -206,7 +206,7 @@ def _ends_inside(crossings: Crossings, span: int, ends: tuple[float, float], fil
     at, one, other = (crossings.point(line, np.asarray(s)) for s in (inner, low, high))
     rule = "must run from free edge to free edge, but ends inside the material"
     remedy = (
-        f"The free edges there are at {_pair(one)} and {_pair(other)}: take the cut on to both, or leave this wall out"
+        f"The free edges there are at {_pair(one)} and {_pair(other)}: take the cut on to both, or leave this wall out."
     )
     return Fault(file, place, rule, _pair(at), remedy)
 
