@@ -39,7 +39,7 @@ class Corner:
     angle_deg : angle of the material around it.
     exponent : stress exponent lambda - 1, negative.
     parts : names of the parts that meet there.
-    wall : thickness of the thinner adjoining wall.
+    wall : thickness of the thinner adjoining wall, or the distance of the nearest other such corner when smaller.
     distance : stresses nearer than this to the corner are not reported as stresses.
     sectors : the materials around it, counter-clockwise.
     part : index of the first part in the mesh.
@@ -124,8 +124,20 @@ def find_corners(mesh: Mesh, edges: Edges, G: FloatArray, distance: float | None
         for first in uses[leaves_free.ravel()[uses]]:
             corner = _corner_of_fan(mesh, G, (start, angle), _fan(mesh, edges, int(first)), segments)
             if corner is not None:
-                found.append(corner if distance is None else replace(corner, distance=distance))
+                found.append(corner)
+    found = _apart(found) if distance is None else [replace(corner, distance=distance) for corner in found]
     return tuple(sorted(found, key=lambda corner: (corner.y, corner.z)))
+
+
+def _apart(corners: list[Corner]) -> list[Corner]:
+    """Corners nearer to each other than their walls are thick (root and toe of a weld) are read within that distance."""
+    places = np.array([(corner.y, corner.z) for corner in corners]).reshape(-1, 2)
+    result = []
+    for corner in corners:
+        away = np.hypot(*(places - (corner.y, corner.z)).T)
+        wall = min([corner.wall, *away[away > 0].tolist()])
+        result.append(replace(corner, wall=wall, distance=SHARE_OF_WALL * wall))
+    return result
 
 
 def corner_mask(places: FloatArray, corners: Sequence[Corner]) -> npt.NDArray[np.bool_]:
