@@ -1,7 +1,7 @@
 """Intervals bracket exact values, coarse intervals hold fine ones, the identity closes to round-off, effectivity is below 2.
 
-Curved sections are meshed with polynomial sides, so that the exact value of the true curve may lie outside by the error of the area;
-the tests add that error, seen on the mesh itself, and nothing else.
+Curved sections are meshed with polynomial sides, so that the exact value of the true curve may lie outside by the error of
+the area; the tests add that error, seen on the mesh itself, and nothing else.
 """
 
 from __future__ import annotations
@@ -120,6 +120,7 @@ def test_polygons(name: str, order: int, nu: float) -> None:
     """All constants, skew coupling and both shear centres, with re-entrant corners: solutions independent of finite elements."""
     section, exact = solved(POLYGON_MESHES[name](order), nu), POLYGONS[name]
     found, area = certify(section), section.area.EA / (2 * (1 + nu))
+    assert area == pytest.approx(POLYGON_AREAS[name], rel=1e-12)  # the lines of the mesh are where they should be
     assert holds(found.GIT, exact.IT, exact.digits)
     yy, zz, yz = exact.A_flexibility if nu else exact.A_flexibility_nu0
     assert holds(found.GAsy, area / yy, exact.digits)
@@ -138,25 +139,30 @@ POLYGON_MESHES: dict[str, Callable[[int], Mesh]] = {
         [(np.cos(k * np.pi / 3), np.sin(k * np.pi / 3)) for k in range(6)], 2, p
     ),
     "angle": lambda p: structured.l_shape(100, 10, p),
-    "channel": lambda p: structured.channel(100, 50, 20, p),
+    "channel": lambda p: structured.channel(100, 50, 20, p, levels=2),
     "box": lambda p: structured.box(100, 10, p),
 }
+POLYGON_AREAS = {"right triangle": 0.5, "hexagon": 1.5 * np.sqrt(3), "angle": 1900, "channel": 3200, "box": 3600}
 
 
-def l_section(order: int, levels: int) -> Mesh:
+def l_section(order: int, levels: int, coarse: float = 1.0) -> Mesh:
     """Legs 8 and 10, thickness 1, sharp."""
-    ys, zs = (structured.graded_lines(0, size, [1.0], 1.0, levels) for size in (8.0, 10.0))
+    ys, zs = (structured.graded_lines(0, size, [1.0], coarse, levels) for size in (8.0, 10.0))
     return structured.grid(ys, zs, order, lambda y, z: np.where((y < 1) | (z < 1), 0, -1))
 
 
 @every_order
 def test_l_section(order: int) -> None:
-    """IT = 5.52908 (two-sided, [5.529061, 5.529089] on a mesh graded to 1e-5, computed beforehand by another program)."""
+    """IT = 5.52908, two-sided [5.529061, 5.529089] on a mesh graded to 1e-5: computed beforehand by another program."""
     found = certify(solved(l_section(order, 3)))
-    assert holds(found.GIT, 5.529075, 14e-6 / 5.529)
-    if order == 5:
-        low, high = certify(solved(l_section(order, 12))).GIT
-        assert 5.529061 < low < high < 5.529089
+    assert found.GIT[0] <= 5.529061
+    assert found.GIT[1] >= 5.529089
+
+
+def test_l_section_graded() -> None:
+    """Two two-sided results, of two programs on two meshes, lie inside each other."""
+    low, high = certify(solved(l_section(5, 10, 0.5))).GIT
+    assert 5.529061 < low < high < 5.529089
 
 
 def cruciform(order: int, levels: int) -> Mesh:
@@ -176,7 +182,7 @@ def slit_square(order: int, levels: int) -> Mesh:
 @lru_cache
 def finest(shape: Callable[[int, int], Mesh], nu: float) -> Certificate:
     """Narrow intervals of a section without a closed form."""
-    return certify(solved(shape(5, 14), nu))
+    return certify(solved(shape(5, 10), nu))
 
 
 @every_order
@@ -189,7 +195,11 @@ def test_coarse_intervals_hold_the_narrow_ones_of_a_graded_mesh(
     for name in ("GIT", "GAsy", "GAsz"):
         low, high = getattr(fine, name)
         assert high - low < 3e-4 * high
-        assert getattr(coarse, name)[0] <= low < high <= getattr(coarse, name)[1]
+        round_off = (
+            1e-11 * high
+        )  # at nu = 0 the stress under Vy is a parabola, and both intervals are as wide as round-off
+        assert getattr(coarse, name)[0] <= low + round_off
+        assert getattr(coarse, name)[1] >= high - round_off
     for name in INTERVALS:
         assert getattr(coarse, name)[0] <= getattr(fine, name)[1]
         assert getattr(coarse, name)[1] >= getattr(fine, name)[0]
@@ -331,7 +341,7 @@ def test_turning_and_scaling(order: int, degrees: float) -> None:
     mesh = structured.channel(10, 5, 1.0, order)
     before = certify(solved(mesh, 0.25))
     after = certify(solved(structured.moved(mesh, degrees, 3.0, (7.0, -2.0)), 0.25))
-    assert after.GIT == pytest.approx(tuple(81 * x for x in before.GIT), rel=1e-9)
+    assert pytest.approx(tuple(81 * x for x in before.GIT), rel=1e-9) == after.GIT
     assert after.energy_error["T"] == pytest.approx(before.energy_error["T"], rel=1e-7)
     if degrees == 90.0:
         assert after.GAsz == pytest.approx(tuple(9 * x for x in before.GAsy), rel=1e-9)
@@ -390,49 +400,36 @@ def test_identity_closes_to_round_off_where_the_exact_field_is_a_polynomial(orde
     assert first + second == pytest.approx(both, rel=1e-11)
 
 
+def rectangle_field(nu: float) -> Callable[[np.ndarray], np.ndarray]:
+    """Stress under Vz = 1 in the rectangle 1 x 2 as a function of the position from the centre."""
+    return lambda r: oracles.rectangle_flexure(r[..., 0], r[..., 1], 1, 2, nu / (1 + nu))
+
+
 @every_order
 def test_identity_on_the_rectangle(order: int) -> None:
-    """The exact stress is a series with r log r at corners: the rule of degree 20 leaves 1e-5 of the error's square."""
-    section = solved(structured.rectangle(1, 2, 2, 4, order), 0.25)
-    exact = lambda r: oracles.rectangle_flexure(r[..., 0], r[..., 1], 1, 2, 0.25 / 1.25)  # noqa: E731
-    first, second, both = three_energies(section, exact, 2, 20)
-    assert first + second == pytest.approx(both, rel=1e-4)
-
-
-@every_order
-@pytest.mark.parametrize("name", ["rectangle", "star", "channel", "ring"])
-def test_identity_defect_is_round_off(name: str, order: int) -> None:
-    mesh = {
-        "rectangle": lambda: structured.rectangle(1, 2, 3, 6, order),
-        "star": lambda: structured.star_polygon([1, 0.3, 0.8, 0.5, 0.9], 3, order),
-        "channel": lambda: structured.channel(100, 50, 5, order, levels=3),
-        "ring": lambda: structured.ring_sector(0.8, 1.0, (0, 360), 24, 2, order),
-    }[name]()
-    assert bounds_of(solved(mesh, 0.3)).identity_defect < 1e-11
+    """The exact stress is a series with r log r at the corners: seen are 1.2e-6 at degree 5, falling with the rule's degree."""
+    section = solved(structured.rectangle(1, 2, 1, 2, order), 0.25)
+    first, second, both = three_energies(section, rectangle_field(0.25), 2, 60)
+    assert first + second == pytest.approx(both, rel=4e-6)
 
 
 # --- errors and indicators ---------------------------------------------------------------------------------------------------
 
 
-def rectangle_errors(section: Solved, nu: float) -> dict[str, float]:
-    """True relative energy errors on the rectangle 1 x 2 for T and Vz; those of Vz from the split of the energy by nu."""
-    energy, area = section.integrals.energy, 2.0
-    IT = oracles.rectangle_torsion_constant(1, 2)
-    first, whole = 6 / 5 / area, 1 / (area * oracles.rectangle_shear_coefficient(1, 2, nu))
-    square = (first - energy[2, 2]) + (energy[4, 4] - (whole - first))
-    return {"T": float(np.sqrt((energy[0, 0] - IT) / energy[0, 0])), "Vz": float(np.sqrt(square / whole))}
-
-
 @every_order
 @pytest.mark.parametrize("nu", [0.25, 0.5])
 def test_effectivity_on_the_rectangle(order: int, nu: float) -> None:
+    """Torsion by the exact constant, flexure by the exact field at points."""
     section = solved(structured.rectangle(1, 2, 3, 6, order), nu)
     found = certify(section).energy_error
-    for action, true in rectangle_errors(section, nu).items():
-        print(
-            f"order {order}, nu {nu}, {action}: bound {found[action]:.3e}, error {true:.3e}, ratio {found[action] / true:.3f}"
-        )
-        assert 1 - 1e-6 <= found[action] / true < 2
+    twist = section.integrals.energy[0, 0]
+    IT = oracles.rectangle_torsion_constant(1, 2)
+    square, _, _ = three_energies(section, rectangle_field(nu), 2, 20)
+    whole = 1 / (2 * oracles.rectangle_shear_coefficient(1, 2, nu))
+    for action, true in (("T", np.sqrt((twist - IT) / twist)), ("Vz", np.sqrt(square / whole))):
+        ratio = found[action] / true
+        print(f"order {order}, nu {nu}, {action}: bound {found[action]:.3e}, error {true:.3e}, ratio {ratio:.3f}")
+        assert 1 < ratio < 2
 
 
 @pytest.mark.parametrize("name", ["angle", "channel", "box", "right triangle", "hexagon"])
@@ -473,6 +470,19 @@ def test_error_matrix_holds_the_widths() -> None:
     assert found.error[0, 0] == pytest.approx(high - low, rel=1e-7)
     np.testing.assert_allclose(found.error, found.error.T)
     assert np.linalg.eigvalsh(found.error).min() > -1e-15
+
+
+def test_energy_errors_of_flexure_hold_the_product_of_both_parts() -> None:
+    section = solved(structured.l_shape(5, 1, 3), 0.5)
+    found, diagonal = bounds_of(section), np.diag(section.integrals.energy)
+    for k, action in enumerate(ACTIONS[:2]):
+        parts = [1 + k, 3 + k]
+        square = found.error[np.ix_(parts, parts)].sum()
+        assert abs(found.error[1 + k, 3 + k]) > 0.01 * square  # it enters twice: 1 % of the root, against 1e-3 below
+        # the energy below the bar is a lower bound, less than 1e-3 away
+        assert found.certificate.energy_error[action] == pytest.approx(
+            np.sqrt(square / diagonal[parts].sum()), rel=1e-3
+        )
 
 
 # --- when bounds are not strict ------------------------------------------------------------------------------------------------

@@ -33,7 +33,9 @@ is polarisation, 4 (a, b) = |a + b|² - |a - b|², with a and b scaled for the n
 
 Trefftz shear centre. From the centroid ysc = ∫ t . tau_0z and zsc = -∫ t . tau_0y, and ∫ t . tau_0k = (G t, tau_0k) =
 -(G grad omega, tau_0k) as tau_T is in K: an entry of C. By (3) and (4) it is m_k - W_kT - D_Tk/2 +- sqrt(D_TT D_kk)/2,
-m_k the moment of tau_0k,h. The centre of zero mean twist, ∫ t . (tau_0k + tau_1k), adds (tau_T, tau_1k), an entry of A.
+m_k the moment of tau_0k,h. The centre of zero mean twist, ∫ t . (tau_0k + tau_1k), adds (tau_T, tau_1k), an entry of A. With
+the parts a = sigma_h - tau in K and b = tau - tau_h of e, orthogonal to each other, the entries of A and C differ from
+their middles by +- [(a_T, a_k) - (b_T, b_k)]/2: the two add up to one bound, sqrt(D_TT) |e_0k + e_1k|/2.
 
 Shear flexibility of forces through the Trefftz centre. tau_0 is orthogonal to K, thus F_vv = C_vv + A_vv,
 F_vT = A_vT/A_TT, F_TT = 1/A_TT and
@@ -233,9 +235,8 @@ def _centres(
     twist, trefftz, whole = float(error[TORSION, TORSION]), [], []
     for parts in ([1, 3], [2, 4]):
         middle = integrals.moment[parts] - differences.work[parts, TORSION] - error[TORSION, parts] / 2
-        widths = np.sqrt(np.maximum(np.diag(error)[parts], 0.0))
-        trefftz.append(make.pair(float(middle[0]), twist, widths[0] ** 2, size))
-        whole.append(make.pair(float(middle.sum()), twist, widths.sum() ** 2, size))
+        trefftz.append(make.pair(float(middle[0]), twist, float(error[parts[0], parts[0]]), size))
+        whole.append(make.pair(float(middle.sum()), twist, float(error[np.ix_(parts, parts)].sum()), size))
     return trefftz, whole
 
 
