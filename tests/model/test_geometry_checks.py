@@ -266,3 +266,14 @@ def test_an_outline_that_is_thin_as_a_round_off_is_a_fault():
     assert (
         "is thinner than" in faults_of(square("a", 0, 0), part("b", "rectangle width=10 height=1e-9", "at=[0, 5]"))[0]
     )
+
+
+def test_a_shape_too_small_for_its_place_is_a_fault():
+    assert faults_of(part("a", "circle diameter=1", "at = [0, 2e6]")) == [
+        'a.toml: parts[0] "a" is too far from the origin for its size, at [0, 2000000]. '
+        "Put it nearer to the origin, or check its numbers and their units."
+    ]
+
+
+def test_a_hole_larger_than_its_part_is_a_fault():
+    assert "is larger than its part" in faults_of(square("a", 0, 0), hole("circle diameter=1e9", "[0, 0]"))[0]

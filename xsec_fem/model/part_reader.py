@@ -7,6 +7,8 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import TypeVar
 
+import numpy as np
+
 from xsec_fem.model.faults import FaultList
 from xsec_fem.model.mesh_region import mesh_region
 from xsec_fem.model.outline import Face, Isometry, Loop
@@ -17,6 +19,7 @@ from xsec_fem.model.shapes import SHAPES, ShapeSpec
 from xsec_fem.model.shapes.file import FileShape
 from xsec_fem.model.wording import did_you_mean, listed, named, quoted, text_with_unit, value_text
 
+_FARTHEST = 1e-6  # least size over coordinates: of 16 digits, 10 are left for the shape itself
 PlacementT = TypeVar("PlacementT", bound=PlacementTable)
 
 
@@ -112,10 +115,13 @@ def _placed_face(spec: ShapeSpec, where: PlacementTable, place: str, faults: Fau
         face = spec.face()
         move = placement(face, where.anchor or spec.default_anchor, where.at, where.rotate, where.mirror)
         placed = face.moved(move)
-        for loop in placed.loops:  # far from the origin, the points of a small arc become one
-            loop.polyline()
+        outline, *_ = [loop.polyline() for loop in placed.loops]  # all of them: each must be drawable
     except (ArithmeticError, ValueError):
         faults.add(place, "has sizes too far apart to work with", None, "Check the numbers of the shape and of at.")
+        return None, Isometry()
+    if np.ptp(outline, axis=0).max() < _FARTHEST * np.abs(outline).max():
+        remedy = "Put it nearer to the origin, or check its numbers and their units."
+        faults.add(place, f"is too far from the origin for its size, at {value_text(where.at)}", None, remedy)
         return None, Isometry()
     return placed, move
 

@@ -127,4 +127,4 @@ def _is_numeric(value: object) -> bool:
 
 
 def _shortened(text: str) -> str:
-    return text if len(text) <= _LONGEST_VALUE else text[: _LONGEST_VALUE - 4] + " ..." + text[-1]
+    return text if len(text) <= _LONGEST_VALUE else text[: _LONGEST_VALUE - 5] + " ..." + text[-1]
