@@ -9,6 +9,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 
 from xsec_fem.model.section import Section
+from xsec_fem.pipeline.joint_cautions import joint_cautions
 from xsec_fem.pipeline.solution import Solution
 from xsec_fem.recovery.corners import Corner, corner_mask
 from xsec_fem.recovery.section_forces import reduce_actions
@@ -21,6 +22,8 @@ _POISSON_SHARE = 0.05
 _SLENDER_WALL = 60.0
 # decay length of restrained warping over the section's size above which it must be looked at (common practice, no source)
 _WARPING_REACH = 1.0
+
+_SLIT_DEG = 359.0  # corners beyond this are ends of slits, which no radius rounds
 
 # a torque below this share of shear times size does not count as twist: it is the scatter of dimensions
 _TWIST = 1e-3
@@ -52,6 +55,7 @@ def cautions(evidence: Evidence) -> tuple[Caution, ...]:
     found = [Caution(code, message) for code, message in evidence.section.cautions]
     for source in (_accuracy, _load_points, _corners, _unequal_nu, _poisson, _restrained_warping, _slender_walls):
         found += source(evidence)
+    found += joint_cautions(evidence.section, evidence.cases)
     return tuple(found)
 
 
@@ -95,10 +99,15 @@ def _corners(evidence: Evidence) -> Iterator[Caution]:
     others = len(evidence.corners) - 1
     more = f" (and {others} more such corner{'s' if others > 1 else ''}, listed under corners)" if others else ""
     reading = f"Stresses are read {worst.distance:.3g} {length} away from it"
+    remedy = (
+        "Use the mean over the joint"
+        if worst.angle_deg > _SLIT_DEG
+        else "Give a root radius, or use the mean over the joint"
+    )
     yield Caution(
         "singular corner",
         f"Corner of {worst.angle_deg:.0f} deg at ({worst.y:.4g}, {worst.z:.4g}){more}: the stress grows without limit, as "
-        f"r^{worst.exponent:.3f}. {reading}. Give a root radius, or use the mean over the joint.",
+        f"r^{worst.exponent:.3f}. {reading}. {remedy}.",
     )
 
 

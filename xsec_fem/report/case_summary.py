@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from xsec_fem.recovery.largest import Largest
 from xsec_fem.report.blocks import Block, Lines, Table
+from xsec_fem.report.joint_blocks import joint_blocks, utilisation_text
 from xsec_fem.report.numbers import number, point
 from xsec_fem.report.wording import actions_text, load_point_text, section_size
 from xsec_fem.results import CaseResult, Result
@@ -14,12 +15,7 @@ def case_blocks(result: Result, case: CaseResult) -> list[Block]:
     blocks: list[Block] = [Lines(_head(result, case)), _parts(result, case)]
     if any(part.tau_max.beside_corner for part in case.parts):
         blocks.append(Lines(("* read beside a corner without limit, which governs it",)))
-    if case.joints:
-        blocks.append(_joints(result, case))
-        if not all(joint.separates for joint in case.joints):
-            blocks.append(
-                Lines(("(shared): other paths carry part of V S/I too; the flow is this joint's own part of it.",))
-            )
+    blocks += joint_blocks(result, case)
     if case.probes:
         blocks.append(_probes(result, case))
     return blocks
@@ -68,33 +64,11 @@ def _parts(result: Result, case: CaseResult) -> Table:
             number(part.tau_max.value),
             point(part.tau_max.y, part.tau_max.z, size) + (" *" if part.tau_max.beside_corner else ""),
             number(part.von_mises_max.value),
-            *((_ratio(part.utilisation),) if rated else ()),
+            *((utilisation_text(part.utilisation),) if rated else ()),
         )
         for part in case.parts
     ]
     return Table((*header, "utilisation [-]") if rated else header, tuple(rows), "llrlr" + "r" * rated)
-
-
-def _joints(result: Result, case: CaseResult) -> Table:
-    units, size = result.section.units, section_size(result)
-    rows = tuple(
-        (
-            joint.name, joint.kind, number(joint.flow, scale=_flow_scale(case)),
-            number(joint.by_hand, scale=_flow_scale(case)) + ("" if joint.separates else " (shared)"),
-            number(joint.mean, scale=case.tau_max.value), number(joint.peak, scale=case.tau_max.value),
-            point(*joint.peak_at, size), _strength(joint.capacity), _ratio(joint.utilisation),
-        )
-        for joint in case.joints
-    )  # fmt: skip
-    header = (
-        "joint", "kind", f"flow [{units.flow}]", f"by hand V S/I [{units.flow}]", f"mean [{units.stress}]",
-        f"peak [{units.stress}]", f"at (y, z) [{units.length}]", f"strength [{units.stress}]", "utilisation [-]",
-    )  # fmt: skip
-    return Table(header, rows, "llrrrrlrr")
-
-
-def _flow_scale(case: CaseResult) -> float:
-    return max(abs(joint.flow) for joint in case.joints)
 
 
 def _probes(result: Result, case: CaseResult) -> Table:
@@ -111,13 +85,3 @@ def _probes(result: Result, case: CaseResult) -> Table:
     )  # fmt: skip
     stresses = tuple(f"{name} [{units.stress}]" for name in ("tau_xy", "tau_xz", "|tau|", "sigma_x", "von Mises"))
     return Table(("probe", "part", f"at (y, z) [{units.length}]", *stresses), rows, "lllrrrrr")
-
-
-def _ratio(utilisation: float | None) -> str:
-    if utilisation is None:
-        return "-"
-    return f"{utilisation:.3f}" + (" OVER" if utilisation > 1.0 else "")
-
-
-def _strength(value: float | None) -> str:
-    return "-" if value is None else number(value)

@@ -81,10 +81,14 @@ def _contacts(result: Result) -> list[Block]:
         return []
     length = result.section.units.length
     rows = tuple(
-        (" | ".join(contact.parts), number(contact.length), contact.joint or "none: taken as one solid")
+        (
+            " | ".join(contact.parts), number(contact.length), number(contact.slit, scale=contact.length),
+            contact.joint or "none: taken as one solid",
+        )
         for contact in result.contacts
-    )
-    return [Heading("Parts that touch"), Table(("parts", f"along [{length}]", "joint"), rows, "lrl")]
+    )  # fmt: skip
+    header = ("parts", f"along [{length}]", f"of it a slit [{length}]", "joint")
+    return [Heading("Parts that touch"), Table(header, rows, "lrrl")]
 
 
 def _corners(result: Result) -> list[Block]:
