@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import html
 import json
+import math
 from collections.abc import Mapping
 from dataclasses import asdict, dataclass, field, replace
 from typing import Any
@@ -15,9 +16,13 @@ from typing import Any
 import numpy as np
 import numpy.typing as npt
 
+from xsec_fem.elementary.compare import Comparison
+from xsec_fem.elementary.formula import HandValue
+from xsec_fem.elementary.verdict import Finding, Verdict
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Actions, Section
 from xsec_fem.recovery.corners import Corner, corner_mask
+from xsec_fem.recovery.cuts import CutResult
 from xsec_fem.recovery.joint_results import JointResult
 from xsec_fem.recovery.largest import Largest
 from xsec_fem.recovery.section_forces import reduce_actions
@@ -164,8 +169,25 @@ class CornerReading:
 
 
 @dataclass(frozen=True)
+class CutComparison:
+    """A named cut under one load case: what the field says, and the hand calculation where the cut separates the section."""
+
+    field: CutResult
+    hand: HandValue
+
+    @property
+    def ratio(self) -> float | None:
+        """Largest |tau . n| of the field over V S/(I t); None without a hand value."""
+        calculation = self.hand.calculation
+        return abs(self.field.peak / calculation.tau) if calculation is not None and calculation.tau else None
+
+
+@dataclass(frozen=True)
 class CaseResult:
-    """One load case: actions as given, forces at the shear centre, largest stresses, joints, probes and corners."""
+    """One load case: actions as given, forces at the shear centre, largest stresses, joints, probes, corners and cuts.
+
+    `comparison` and `verdict` set the field against V S/(I t); None in a case without shear.
+    """
 
     name: str
     actions: Actions
@@ -175,6 +197,9 @@ class CaseResult:
     joints: tuple[JointResult, ...] = ()
     probes: tuple[ProbeResult, ...] = ()
     corners: tuple[CornerReading, ...] = ()
+    cuts: tuple[CutComparison, ...] = ()
+    comparison: Comparison | None = None
+    verdict: Verdict | None = None
 
     @property
     def T_total(self) -> float:
@@ -342,6 +367,40 @@ def _corner_dict(corner: Corner) -> dict[str, Any]:
     }  # fmt: skip
 
 
+def _cut_dict(cut: CutComparison) -> dict[str, Any]:
+    field, calculation = cut.field, cut.hand.calculation
+    entry: dict[str, Any] = {
+        "name": field.name, "flow": field.flow, "t": field.t, "mean": field.mean, "peak": field.peak,
+        "peak_at": list(field.peak_at),
+        "walls": [
+            {"t": span.t, "parts": list(span.parts), "flow": span.flow, "mean": span.mean, "peak": span.peak}
+            for span in field.spans
+        ],
+    }  # fmt: skip
+    if calculation is None:
+        return {**entry, "no_hand_value": cut.hand.reason}
+    symbols = {symbol: value for symbol, value, *_ in calculation.symbols()}
+    return {**entry, "elementary": calculation.tau, "ratio": cut.ratio, "hand": symbols}
+
+
+def _verdict_dict(verdict: Verdict) -> dict[str, Any]:
+    def entry(finding: Finding) -> dict[str, Any]:
+        return {
+            "name": finding.name, "side": finding.side, "grade": finding.grade, "worst_ratio": _finite(finding.ratio),
+            "elasticity": finding.elasticity, "elementary": finding.elementary, "at": list(finding.at),
+            "cause": finding.cause, "message": finding.message,
+        }  # fmt: skip
+
+    return {
+        "verdict": verdict.grade, "message": verdict.message,
+        "parts": [entry(finding) for finding in verdict.parts], "walls": [entry(finding) for finding in verdict.walls],
+    }  # fmt: skip
+
+
+def _finite(value: float) -> float | None:
+    return value if math.isfinite(value) else None
+
+
 def _rounded_dict(rounded: Result) -> dict[str, Any]:
     return {
         "radius": rounded.section.solve.try_radius,
@@ -377,6 +436,8 @@ def _case_dict(case: CaseResult) -> dict[str, Any]:
             for probe in case.probes
             for value in probe.values
         ],
+        "cuts": [_cut_dict(cut) for cut in case.cuts],
+        **({} if case.verdict is None else {"elementary": _verdict_dict(case.verdict)}),
         "corners": [
             {key: value for key, value in asdict(corner).items() if value is not None} for corner in case.corners
         ],

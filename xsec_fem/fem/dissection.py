@@ -19,8 +19,9 @@ _SHARE = 0.999  # positions inside a set are scaled to stay below the next set's
 _DIRECTIONS = np.array([[1.0, 0.0], [0.0, 1.0], [0.70710678, 0.70710678], [0.70710678, -0.70710678]])
 
 
-def _bisection_codes(mesh: Mesh, levels: int) -> IntArray:
-    """(M,) the path of each triangle through the halvings, one bit a level, the first halving in the highest bit."""
+def bisection_codes(mesh: Mesh) -> IntArray:
+    """Return the path of each triangle through the halvings, (M,): one bit a level, the first halving in the highest bit."""
+    levels = max(0, int(np.floor(np.log2(max(len(mesh.triangles), 1) / _LEAF))))
     centre = mesh.nodes[mesh.triangles[:, :3]].mean(axis=1)
     projections = centre @ _DIRECTIONS.T
     order = np.arange(len(centre))  # triangles sorted by set
@@ -47,19 +48,25 @@ def _bisection_codes(mesh: Mesh, levels: int) -> IntArray:
 
 def dissection_numbering(mesh: Mesh) -> IntArray:
     """Return the place of each node in the elimination order, a permutation of shape (N,)."""
-    levels = max(0, int(np.floor(np.log2(max(len(mesh.triangles), 1) / _LEAF))))
-    codes = _bisection_codes(mesh, levels)
+    codes = bisection_codes(mesh)
     size = len(mesh.nodes)
     flat = mesh.triangles.ravel()
     by_node = np.argsort(flat, kind="stable")
     starts = np.searchsorted(flat[by_node], np.arange(size))
     repeated = np.repeat(codes, mesh.triangles.shape[1])[by_node]
     low, high = np.minimum.reduceat(repeated, starts), np.maximum.reduceat(repeated, starts)
-    # triangles of a node share the leading bits of their paths; the bits below the first difference are filled with
-    # ones, which puts the node behind everything in the set it separates
+    return place_behind_sets(low, high)
+
+
+def place_behind_sets(low: IntArray, high: IntArray) -> IntArray:
+    """Return the places (n,) in the elimination order of unknowns whose triangles' paths reach from `low` (n,) to `high` (n,).
+
+    The triangles of an unknown share the leading bits of their paths; the bits below the first difference are filled with
+    ones, which puts the unknown behind everything in the set it separates.
+    """
     below = np.frexp((low ^ high).astype(np.float64))[1].astype(np.int64)
     last = high | ((np.int64(1) << below) - 1)
     order = np.lexsort((below, last))
-    numbering = np.empty(size, np.int64)
-    numbering[order] = np.arange(size)
-    return numbering
+    places = np.empty(len(order), np.int64)
+    places[order] = np.arange(len(order))
+    return places

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 import numpy.typing as npt
 
-from xsec_fem.fem.dissection import _LEAF, _bisection_codes
+from xsec_fem.fem.dissection import bisection_codes, place_behind_sets
 from xsec_fem.fem.edges import Edges
 from xsec_fem.fem.mesh import Mesh
 
@@ -17,14 +17,7 @@ def edge_numbering(mesh: Mesh, edges: Edges) -> IntArray:
 
     An edge between two sets of triangles comes after both, as in `xsec_fem.fem.dissection`.
     """
-    levels = max(0, int(np.floor(np.log2(max(len(mesh.triangles), 1) / _LEAF))))
-    codes = _bisection_codes(mesh, levels)
+    codes = bisection_codes(mesh)
     first = codes[edges.triangles[:, 0]]
     second = np.where(edges.triangles[:, 1] >= 0, codes[edges.triangles[:, 1]], first)
-    # bits below the first difference are filled with ones: the edge goes behind everything in the set it separates
-    below = np.frexp((first ^ second).astype(np.float64))[1].astype(np.int64)
-    last = np.maximum(first, second) | ((np.int64(1) << below) - 1)
-    order = np.lexsort((below, last))
-    numbering = np.empty(len(order), np.int64)
-    numbering[order] = np.arange(len(order))
-    return numbering
+    return place_behind_sets(np.minimum(first, second), np.maximum(first, second))

@@ -80,7 +80,7 @@ def factorise(matrix: sp.csc_matrix, numbering: IntArray, pinned: int) -> Neuman
     Raises SolveError when the matrix is singular beyond the constants (two separate bodies) or not positive.
     """
     size = matrix.shape[0]
-    bodies = connected_components(matrix, directed=False, return_labels=False)
+    bodies, _ = connected_components(matrix, directed=False)
     if bodies > 1:  # round-off in the pivots would hide it: each body has constants of its own
         raise SolveError(f"the stiffness matrix of {size} unknowns is singular: the mesh falls into {bodies} bodies")
     diagonal = matrix.diagonal()

@@ -20,7 +20,7 @@ from xsec_fem.model.schema import (
     WeldTable,
 )
 from xsec_fem.model.section import Actions, Cut, Fasteners, FilletWeld, Joint, Probe
-from xsec_fem.model.wording import did_you_mean, named, quoted, value_text
+from xsec_fem.model.wording import did_you_mean, named, value_text
 
 _TABLES: dict[str, type[JointTable]] = {
     "glue": GlueTable,
@@ -82,11 +82,6 @@ def read_cuts(tables: list[object], faults: FaultList) -> tuple[Cut, ...]:
         if read.start == read.end:
             faults.add(place, "must have two different ends", f"from = to = {value_text(read.start)}")
         found.append(Cut(read.name or default_name("cuts", index), read.start, read.end))
-    if found:
-        message = (
-            f"Cuts are read and drawn, but not evaluated in this version: {', '.join(quoted(c.name) for c in found)}."
-        )
-        faults.caution("cuts", message)
     return tuple(found)
 
 

@@ -45,6 +45,8 @@ def solve_adaptively(
         with watch.stage("mesh"):
             mesh = make_mesh(section, sizes=sizes)
         solution = solve_mesh(section, mesh, watch)
+        if solution.bounds is None:
+            return solution, tuple(steps)
         steps.append(mesh_step(solution))
         if progress is not None:
             progress(steps[-1])

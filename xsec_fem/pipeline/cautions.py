@@ -61,6 +61,12 @@ def cautions(evidence: Evidence) -> tuple[Caution, ...]:
 
 def _accuracy(evidence: Evidence) -> Iterator[Caution]:
     wanted, solution = evidence.section.solve.accuracy, evidence.solution
+    if solution.no_bounds:
+        yield Caution(
+            "no certificate",
+            f"No guaranteed bounds could be computed on this mesh, and it was not refined: {solution.no_bounds}. "
+            "Thicker layers or larger radii make it better conditioned.",
+        )
     if solution.bounds is not None and solution.energy_error > wanted:
         drawn = all(part.face is not None for part in evidence.section.parts)
         why = f"the mesh already has {len(solution.mesh.nodes)} nodes" if drawn else "a mesh from a file is not refined"

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from xsec_fem.fem.mesh import Mesh
+from xsec_fem.model.outline import Line
 from xsec_fem.model.section import Material, Section
 from xsec_fem.pipeline.solution import Solution
 from xsec_fem.results import Certificate, Properties
@@ -47,12 +48,21 @@ def section_properties(section: Section, solution: Solution) -> Properties:
     )  # fmt: skip
 
 
+def _has_curves(section: Section) -> bool:
+    """True when a drawn part has an arc in its outline."""
+    loops = (loop for part in section.parts if part.face is not None for loop in part.face.loops)
+    return any(not isinstance(segment, Line) for loop in loops for segment in loop.segments)
+
+
 def certificate_over_reference(section: Section, solution: Solution) -> Certificate | None:
     """Return the guaranteed intervals of the constants as `section_properties` gives them [mm, mm², mm⁴]; None without bounds."""
     if solution.bounds is None:
         return None
     _, _, G = _reference_moduli(section, solution)
     proof = solution.bounds.certificate
+    reasons = [proof.reason] if proof.reason else []
+    if not solution.mesh.curved.any() and _has_curves(section):
+        reasons.append("straight-sided triangles stand for curved sides")
     yc, zc = (float(value) for value in solution.warping.problem.area.centroid)
 
     def over(interval: tuple[float, float]) -> tuple[float, float]:
@@ -64,5 +74,5 @@ def certificate_over_reference(section: Section, solution: Solution) -> Certific
     return Certificate(
         dict(proof.energy_error), over(proof.GIT), over(proof.GAsy), over(proof.GAsz), proof.coupling,
         at(proof.ysc_trefftz, yc), at(proof.zsc_trefftz, zc), at(proof.ysc, yc), at(proof.zsc, zc),
-        proof.strict, proof.reason,
+        not reasons, "; ".join(reasons),
     )  # fmt: skip

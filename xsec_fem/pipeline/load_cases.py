@@ -9,15 +9,20 @@ from dataclasses import dataclass
 import numpy as np
 import numpy.typing as npt
 
+from xsec_fem.elementary.compare import compare
+from xsec_fem.elementary.formula import hand_of_cut
+from xsec_fem.elementary.verdict import verdict
 from xsec_fem.errors import Fault, InputError
 from xsec_fem.model.section import Actions, Section
 from xsec_fem.recovery.corners import Corner
+from xsec_fem.recovery.cuts import PlacedCut, cut_result
 from xsec_fem.recovery.joint_results import joint_result
 from xsec_fem.recovery.joints import JointFlows
 from xsec_fem.recovery.largest import Samples, largest_by_part, read_beside_corners
 from xsec_fem.recovery.section_forces import reduce_actions
+from xsec_fem.recovery.solved_fields import SolvedFields
 from xsec_fem.recovery.stress_field import SectionForces, StressField, UnitFields
-from xsec_fem.results import CaseResult, CornerReading, PartResult, ProbeResult, Properties
+from xsec_fem.results import CaseResult, CornerReading, CutComparison, PartResult, ProbeResult, Properties
 
 FloatArray = npt.NDArray[np.float64]
 
@@ -32,6 +37,7 @@ class Recovered:
     properties : constants of the section.
     corners : singular corners; `rings` the points beside them, `intensities` (C, 3) their K under unit Vy, Vz, T.
     flows : the joints' flows under unit actions.
+    solved, cuts : what cuts are read from, and the section file's cuts placed on the mesh.
     """
 
     fields: UnitFields
@@ -40,6 +46,8 @@ class Recovered:
     rings: Samples
     intensities: FloatArray
     flows: Sequence[JointFlows]
+    solved: SolvedFields
+    cuts: Sequence[PlacedCut]
 
 
 def solve_case(section: Section, actions: Actions, unit: Recovered) -> CaseResult:
@@ -54,9 +62,14 @@ def solve_case(section: Section, actions: Actions, unit: Recovered) -> CaseResul
     )
     joints = tuple(joint_result(flow, forces, unit.corners) for flow in unit.flows)
     probes = probe_results(section, stress)
-    return CaseResult(
-        actions.name, actions, forces, stress, parts, joints, probes, corner_readings(stress, forces, unit)
+    comparison = compare(unit.solved, section, forces) if forces.Vy or forces.Vz else None
+    cuts = (
+        CutComparison(cut_result(unit.solved, cut, forces), hand_of_cut(unit.solved, cut, forces)) for cut in unit.cuts
     )
+    return CaseResult(
+        actions.name, actions, forces, stress, parts, joints, probes, corner_readings(stress, forces, unit),
+        tuple(cuts), comparison, None if comparison is None else verdict(comparison),
+    )  # fmt: skip
 
 
 def corner_readings(stress: StressField, forces: SectionForces, unit: Recovered) -> tuple[CornerReading, ...]:

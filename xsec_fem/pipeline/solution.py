@@ -4,7 +4,9 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
+from xsec_fem.errors import SolveError
 from xsec_fem.fem.edges import Edges, mesh_edges
+from xsec_fem.fem.equilibrated import EquilibratedFlux
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Section
 from xsec_fem.pipeline.bodies import require_one_body
@@ -28,7 +30,8 @@ class Solution:
     warping : the five warping functions and what they solve.
     integrals, stiffness : constants from the fields.
     corners : singular corners.
-    bounds : guaranteed bounds; None when they were not asked for.
+    bounds, fluxes : guaranteed bounds and the equilibrated fields behind them; None when they were not asked for, or failed.
+    no_bounds : why they failed, "" otherwise.
     """
 
     mesh: Mesh
@@ -37,7 +40,9 @@ class Solution:
     integrals: FieldIntegrals
     stiffness: ShearStiffness
     corners: tuple[Corner, ...]
-    bounds: Bounds | None
+    bounds: Bounds | None = None
+    fluxes: EquilibratedFlux | None = None
+    no_bounds: str = ""
 
     @property
     def energy_error(self) -> float:
@@ -67,7 +72,13 @@ def solve_mesh(section: Section, mesh: Mesh, watch: Stopwatch, certificate: bool
         stiffness = shear_stiffness(area, integrals)
         corners = find_corners(mesh, edges, moduli.G, section.solve.corner_distance)
     if not certificate:
-        return Solution(mesh, edges, warping, integrals, stiffness, corners, None)
+        return Solution(mesh, edges, warping, integrals, stiffness, corners)
     with watch.stage("certificate"):
-        proof = bounds(warping, integrals, equilibrated_stresses(problem, edges))
-    return Solution(mesh, edges, warping, integrals, stiffness, corners, proof)
+        try:
+            fluxes = equilibrated_stresses(problem, edges)
+        except (
+            SolveError
+        ) as error:  # triangles of sizes too far apart for the second system, while the first was solved
+            return Solution(mesh, edges, warping, integrals, stiffness, corners, no_bounds=str(error))
+        proof = bounds(warping, integrals, fluxes)
+    return Solution(mesh, edges, warping, integrals, stiffness, corners, proof, fluxes)

@@ -26,10 +26,13 @@ from xsec_fem.pipeline.load_cases import Recovered, solve_case
 from xsec_fem.pipeline.solution import Solution, solve_mesh
 from xsec_fem.pipeline.stopwatch import Stopwatch
 from xsec_fem.recovery.corner_intensity import corner_intensities
+from xsec_fem.recovery.cuts import place_cuts
+from xsec_fem.recovery.element_stress import equilibrated_stress
 from xsec_fem.recovery.joint_sides import Connections
 from xsec_fem.recovery.joints import joint_flows
 from xsec_fem.recovery.largest import corner_rings
-from xsec_fem.recovery.stress_field import unit_fields
+from xsec_fem.recovery.solved_fields import SolvedFields
+from xsec_fem.recovery.stress_field import UnitFields, unit_fields
 from xsec_fem.results import MeshStep, Result
 
 LIBRARIES = ("xsec-fem", "numpy", "scipy", "gmsh")
@@ -71,7 +74,7 @@ def solve_on_mesh(section: Section, mesh: Mesh, certificate: bool = True) -> Res
     """Solve a section on a given mesh whose part names are the section's; raises as `solve` does (N, mm, MPa)."""
     watch = Stopwatch()
     solution = solve_mesh(section, mesh, watch, certificate)
-    return recover(section, solution, (mesh_step(solution),) if certificate else (), watch)
+    return recover(section, solution, (mesh_step(solution),) if solution.bounds else (), watch)
 
 
 def recover(section: Section, solution: Solution, steps: tuple[MeshStep, ...], watch: Stopwatch) -> Result:
@@ -83,7 +86,9 @@ def recover(section: Section, solution: Solution, steps: tuple[MeshStep, ...], w
         contacts = named_contacts(section, mesh, edges)  # 9
         flows = joint_flows(Connections.of(section), warping, solution.stiffness, fields, edges, corners)
         rings, intensities = corner_rings(mesh, corners), corner_intensities(warping, solution.stiffness, corners)
-        unit = Recovered(fields, properties, corners, rings, intensities, flows)
+        solved = solved_fields(solution, fields)
+        cuts = place_cuts(solved, section.cuts, section.path.name if section.path else "")
+        unit = Recovered(fields, properties, corners, rings, intensities, flows, solved, cuts)
         cases = tuple(solve_case(section, actions, unit) for actions in section.actions)  # 10
         evidence = Evidence(section, solution, properties, cases, fields)
     return Result(  # 11
@@ -92,6 +97,12 @@ def recover(section: Section, solution: Solution, steps: tuple[MeshStep, ...], w
         certificate=certificate_over_reference(section, solution), mesh_steps=steps,
         versions=library_versions(), timings=dict(watch.seconds),
     )  # fmt: skip
+
+
+def solved_fields(solution: Solution, fields: UnitFields) -> SolvedFields:
+    """Return what cuts are read from: flows of the equilibrated field where there is one, exact to round-off on straight sides."""
+    flow_field = None if solution.fluxes is None else equilibrated_stress(solution.fluxes, solution.stiffness)
+    return SolvedFields(solution.warping, solution.stiffness, fields, solution.edges, solution.corners, flow_field)
 
 
 def library_versions() -> dict[str, str]:
