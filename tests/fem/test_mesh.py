@@ -126,7 +126,7 @@ def test_what_is_accepted_is_positive_wherever_it_is_integrated(order: int) -> N
     """det J of degree 2 (p - 1) can dip below zero between the nodes: the check looks where the integrals look."""
     element, rng = lagrange_triangle(order), np.random.default_rng(order)
     accepted = 0
-    for _ in range(600):
+    for _ in range(200):
         nodes = element.nodes.copy()
         nodes[3:] += rng.uniform(0, 0.5) / order * rng.normal(size=nodes[3:].shape)
         try:
@@ -135,4 +135,4 @@ def test_what_is_accepted_is_positive_wherever_it_is_integrated(order: int) -> N
             continue
         accepted += 1
         assert min(batch.det.min() for batch in batches(mesh)) > 0
-    assert 50 < accepted < 550  # the draw holds both kinds
+    assert 20 < accepted < 180  # the draw holds both kinds

@@ -51,7 +51,7 @@ def test_rectangle_at_centre_and_edge(aspect: float, centre: float, edge: float)
 def test_rectangle_at_every_point_away_from_its_corners(width: float, depth: float, nu: float) -> None:
     """The corners have a stress of r log r: there the error falls as h only; 0.2 away it is that of the degree."""
     section = solved(structured.rectangle(width, depth, int(8 * width), int(8 * depth), 5), nu)
-    y, z, tau = nodal(section)
+    y, z, tau = (values[::4] for values in nodal(section))
     away = (width / 2 - np.abs(y) > 0.2) | (depth / 2 - np.abs(z) > 0.2)
     exact = oracles.rectangle_flexure(y[away], z[away], width, depth, nu / (1 + nu))
     # the worst, 4e-5, is in the second triangle from a corner
