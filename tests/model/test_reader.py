@@ -96,7 +96,7 @@ def test_every_table_becomes_its_object(tmp_path):
     assert section.solve == SolveSettings(0.02, 3, False, tmp_path / "kept.msh")
     assert section.path == path
     assert section.sha256 == hashlib.sha256(path.read_bytes()).hexdigest()
-    assert section.cautions == (("cuts", 'Cuts are read and drawn, but not evaluated in this version: "flange root".'),)
+    assert section.cautions == ()
 
 
 def test_defaults():

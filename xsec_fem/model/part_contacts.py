@@ -54,10 +54,9 @@ def contact(first: Piece, second: Piece) -> Contact:
     import shapely
     from shapely.ops import nearest_points
 
-    distance = float(first.solid.distance(second.solid))
-    if distance > first.scale.same:
-        point = nearest_points(first.solid, second.solid)[0]
-        return Contact("none", distance, (point.x, point.y))
+    if not first.solid.dwithin(second.solid, first.scale.same):
+        point, other = nearest_points(first.solid, second.solid)
+        return Contact("none", float(point.distance(other)), (point.x, point.y))
     shared = shapely.line_merge(first.solid.boundary.intersection(second.near))
     if shared.is_empty:  # one lies deep in the other
         inner = first.solid.intersection(second.solid).representative_point()
