@@ -5,7 +5,8 @@ import pytest
 
 from tests.structured import rectangle
 from xsec_fem.fem.edges import connected_bodies, mesh_edges
-from xsec_fem.fem.slits import open_slits
+from xsec_fem.fem.slits import facing_edges, open_slits
+from xsec_fem.fem.strip_edges import strip_edges
 
 
 def edges_on_axis(mesh, edges, from_y=-np.inf, to_y=np.inf):
@@ -65,3 +66,25 @@ def test_free_edges_among_the_slit_do_nothing():
     mesh = rectangle(2.0, 1.0, 2, 2, 2)
     edges = mesh_edges(mesh)
     assert len(open_slits(mesh, edges, edges.free).nodes) == len(mesh.nodes)
+
+
+@pytest.mark.parametrize("order", range(1, 6))
+def test_faces_of_a_slit_are_found_again(order):
+    mesh = rectangle(2.0, 1.0, 4, 4, order)
+    edges = mesh_edges(mesh)
+    assert len(facing_edges(mesh, edges)) == 0
+    split = open_slits(mesh, edges, edges_on_axis(mesh, edges, to_y=0.0))
+    again = mesh_edges(split)
+    pairs = facing_edges(split, again)
+    assert len(pairs) == 2
+    assert (pairs[:, 0] < pairs[:, 1]).all()
+    ends = split.nodes[again.corners[pairs]]
+    assert np.allclose(np.sort(ends[:, 0], axis=1), np.sort(ends[:, 1], axis=1), atol=0)
+
+
+def test_edges_on_a_strip():
+    mesh = rectangle(2.0, 1.0, 4, 4, 2)
+    edges = mesh_edges(mesh)
+    on_axis = edges_on_axis(mesh, edges)
+    chosen = strip_edges(mesh, edges, np.arange(len(edges.corners)), ((0.0, 0.0), (1.0, 0.0)))
+    assert set(chosen) == {e for e in on_axis if mesh.nodes[edges.corners[e]].mean(axis=0)[0] > 0}
