@@ -49,8 +49,8 @@ def run(args: argparse.Namespace) -> int:
         with args.output.open("x", encoding="utf-8") as file:
             file.write(text)
     except FileExistsError as error:
-        raise InputError([Fault(str(args.output), "", "exists already", None, "Give another name with -o")]) from error
+        raise InputError([Fault(str(args.output), "", "exists already", None, "Give another name with -o.")]) from error
     except OSError as error:
-        raise InputError([Fault(str(args.output), "", f"cannot be written: {error.strerror}")]) from error
+        raise InputError([Fault(str(args.output), "", f"cannot be written: {str(error.strerror).lower()}")]) from error
     print(f"{args.output} written; xsec-fem sketch {args.output} draws it", file=sys.stderr)
     return FINE

@@ -61,6 +61,7 @@ def colour_scale(values: FloatArray, shown: tuple[float, float], signed: bool, r
         levels = (np.arange(first, last + 2) - 0.5) * step
         most = float(np.abs(levels).max())
         limits = (-most, most)
-    below, above = bool((values < levels[0]).any()), bool((values > levels[-1]).any())
+    slack = 1e-9 * float(levels[-1] - levels[0])  # a limit of the bands is met but for round-off
+    below, above = bool((values < levels[0] - slack).any()), bool((values > levels[-1] + slack).any())
     extend = {(False, False): "neither", (True, False): "min", (False, True): "max", (True, True): "both"}[below, above]
     return ColourScale(levels, ticks, "RdBu_r" if signed else "cividis", limits, extend, flat)

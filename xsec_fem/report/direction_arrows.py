@@ -57,7 +57,9 @@ class _Dense:
 def _moved(
     stress: StressField, dense: _Dense, chosen: IntArray, target: FloatArray, full: npt.NDArray[np.bool_]
 ) -> tuple[FloatArray, FloatArray]:
-    """Places and tau of the chosen points, moved to their targets where these lie in the same triangle, full cells only."""
+    """Places and tau of the chosen points, those of full cells moved to their targets: all at once where these lie in the
+    same triangle, by searching where not.
+    """
     mesh = stress.part_nodes.mesh
     at, along, element = dense.places[chosen], dense.tau[chosen], dense.element[chosen]
     local = reference_coordinates(mesh, element, target)
@@ -67,6 +69,13 @@ def _moved(
     nodes = element[inside]
     at[inside] = np.einsum("kn,knd->kd", table, mesh.nodes[mesh.triangles[nodes]])
     along[inside] = np.einsum("kn,knd->kd", table, stress.tau_components[stress.part_nodes.triangles[nodes]])
+    for k in np.flatnonzero(full & ~inside):
+        y, z = target[k].tolist()
+        try:
+            found = stress.at(y, z)[0]
+        except ValueError:  # just outside of the material: stay at the point next to it
+            continue
+        at[k], along[k] = (y, z), (found.tau_xy, found.tau_xz)
     return at, along
 
 

@@ -17,19 +17,24 @@ def line_height(size: float) -> float:
 
 @lru_cache(maxsize=2)
 def _font(bold: bool) -> Any:
-    from matplotlib.font_manager import FontProperties, findfont, get_font
+    """A font of our own: the drawing changes the size of the ones it shares."""
+    from matplotlib.font_manager import FontProperties, findfont
+    from matplotlib.ft2font import FT2Font
 
-    font = get_font(findfont(FontProperties(weight="bold" if bold else "normal")))
+    font = FT2Font(findfont(FontProperties(weight="bold" if bold else "normal")))
     font.set_size(_MEASURED_AT, 72)
     return font
 
 
 @lru_cache(maxsize=4096)
 def _advance(letter: str, bold: bool) -> float:
-    """Width of one letter as a share of its size."""
-    with warnings.catch_warnings():
-        warnings.simplefilter("ignore")  # a letter that the font lacks is drawn as a box of the width found here
-        glyph = _font(bold).load_char(ord(letter))
+    """Width of one letter as a share of its size; 1 for one that the font lacks, which is drawn as a box."""
+    try:
+        with warnings.catch_warnings():
+            warnings.simplefilter("ignore")
+            glyph = _font(bold).load_char(ord(letter))
+    except RuntimeError:
+        return 1.0
     return float(glyph.linearHoriAdvance) / 65536 / _MEASURED_AT
 
 
