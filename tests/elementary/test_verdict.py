@@ -76,7 +76,7 @@ def test_wide_flange_horizontal_shear_is_not_in_the_formula() -> None:
     judged, found = findings(fields, section, SectionForces(Vz=300_000.0))
     low = found["profile", "formula too low"]
     assert (low.grade, low.cause) == (POOR, "flange")
-    assert "in a flange 300 wide and 20 thick: the horizontal shear of" in low.message
+    assert "in a flange 300 mm wide and 20 mm thick: the horizontal shear of" in low.message
     # independent runs: 2.5 MPa by the horizontal cut; in the field 20.7 along the flange's face and 22.4 in the root beside it
     assert low.elementary == pytest.approx(2.5, abs=0.05)
     assert 20.7 < low.elasticity < 22.4
@@ -89,10 +89,15 @@ def test_wide_flange_horizontal_shear_is_not_in_the_formula() -> None:
     assert judged.grade == POOR
     assert judged.too_low == low
     assert judged.message.startswith("V S/(I t) is poor here. profile: Formula too low: elasticity 2")
+    assert re.search(r"V S/\(I t\) 2\.\d+ MPa, ratio \d+\.\d+ at \(.*\) mm\. This cut", judged.message)
+    assert low.reason.startswith("This cut lies in a flange")
+    assert low.message.endswith(low.reason)
     assert found["profile/web", "formula too low"].grade == GOOD
     flange = found["profile/top flange", "formula too low"]
     assert flange.cause == "radius"
-    assert re.search(r"thickness changes from 20 to 2\d\.\d+ within .* \(root radius or taper\)", flange.message)
+    assert re.search(
+        r"thickness changes from 20 to 2\d\.\d+ mm within .* mm of \(.*\) mm \(root radius or taper\)", flange.message
+    )
     # away from the root the cut across the flange is right, the cut through the section is not
     table = next(
         w.table for w in compare(fields, section, SectionForces(Vz=3e5)).walls if w.name == "profile/top flange"
@@ -155,7 +160,8 @@ def test_walls_that_do_not_share_evenly() -> None:
     low = found["webs", "formula too low"]
     assert low.cause == "walls"
     assert re.search(
-        r"Cut crosses 2 walls \(t = .* \+ .*\)\. The formula's value is their mean; the field's largest is", low.message
+        r"Cut crosses 2 walls \(t = .* \+ .* mm\)\. The formula's value is their mean; the field's largest is",
+        low.message,
     )
 
 
@@ -181,7 +187,8 @@ def test_singular_corner() -> None:
     causes = {f.cause: f for f in found.values()}
     assert "corner" in causes
     assert re.search(
-        r"Corner of 270 deg at \(-?5, 0\): the stress grows without limit\. Read at", causes["corner"].message
+        r"Corner of 270 deg at \(-?5, 0\) mm: the stress grows without limit\. Read at \S+ mm;",
+        causes["corner"].message,
     )
 
 

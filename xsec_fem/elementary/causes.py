@@ -22,6 +22,7 @@ import numpy.typing as npt
 
 from xsec_fem.elementary.compare import Comparison, Difference
 from xsec_fem.fem.line_crossings import Crossings, line_crossings
+from xsec_fem.model.outline import Point
 from xsec_fem.recovery.cuts import as_unit, read_cuts, unit_flows
 
 FloatArray = npt.NDArray[np.float64]
@@ -40,7 +41,7 @@ _SKEW_DEG = 1.0
 
 @dataclass(frozen=True)
 class Cause:
-    """A code from the module docstring and a sentence; numbers in the file's units."""
+    """A code from the module docstring and a sentence; its numbers have the file's units beside them."""
 
     code: str
     sentence: str
@@ -65,11 +66,22 @@ class _Place:
 
     @property
     def where(self) -> str:
-        return f"({_n(self.difference.at[0])}, {_n(self.difference.at[1])})"
+        return place_text(self.difference.at, self.comparison.units.length)
+
+    def length(self, value: float) -> str:
+        return f"{_n(value)} {self.comparison.units.length}"
+
+    def stress(self, value: float) -> str:
+        return f"{_n(value)} {self.comparison.units.stress}"
 
 
 def _n(value: float) -> str:
     return f"{value:.4g}" if abs(value) > 1e-9 else "0"
+
+
+def place_text(at: Point, length: str) -> str:
+    """Return "(y, z) mm" with the file's unit of length."""
+    return f"({_n(at[0])}, {_n(at[1])}) {length}"
 
 
 def cause_of(comparison: Comparison, difference: Difference, normal: FloatArray, one_wall: bool = False) -> Cause:
@@ -85,7 +97,7 @@ def cause_of(comparison: Comparison, difference: Difference, normal: FloatArray,
             return found
     return Cause(
         "uneven",
-        f"The stress is not even over the cut (t = {_n(place.t)}): the formula's value is its mean, the largest is at "
+        f"The stress is not even over the cut (t = {place.length(place.t)}): the formula's value is its mean, the largest is at "
         f"{place.where}.",
     )
 
@@ -117,13 +129,14 @@ def _thicknesses(place: _Place) -> FloatArray:
 
 
 def _corner(place: _Place) -> Cause | None:
+    length = place.comparison.units.length
     for corner in place.comparison.solved.corners:
         distance = math.hypot(place.at[0] - corner.y, place.at[1] - corner.z)
         if distance < 2 * corner.distance:
             return Cause(
                 "corner",
-                f"Corner of {corner.angle_deg:.0f} deg at ({_n(corner.y)}, {_n(corner.z)}): the stress grows without limit. "
-                f"Read at {_n(max(distance, corner.distance))}; give a root radius or use the mean.",
+                f"Corner of {corner.angle_deg:.0f} deg at {place_text((corner.y, corner.z), length)}: the stress grows without "
+                f"limit. Read at {place.length(max(distance, corner.distance))}; give a root radius or use the mean.",
             )
     return None
 
@@ -138,7 +151,7 @@ def _layers(place: _Place) -> Cause | None:
     return Cause(
         "layers",
         f"The cut crosses layers of different G ({listed}): the stress goes with G, the formula spreads it evenly over "
-        f"t = {_n(place.t)}.",
+        f"t = {place.length(place.t)}.",
     )
 
 
@@ -167,8 +180,8 @@ def _flange(place: _Place) -> Cause | None:
     name = ("horizontal", "vertical")[int(np.argmax(np.abs(tangent)))] if straight else "lengthwise"
     return Cause(
         "flange",
-        f"This cut lies in a flange {_n(place.t)} wide and {_n(usual)} thick: the {name} shear of {_n(along)} is not in "
-        f"V S/(I t) = {_n(place.difference.elementary)}.",
+        f"This cut lies in a flange {place.length(place.t)} wide and {place.length(usual)} thick: the {name} shear of "
+        f"{place.stress(along)} is not in V S/(I t) = {place.stress(place.difference.elementary)}.",
     )
 
 
@@ -189,9 +202,10 @@ def _walls(place: _Place) -> Cause | None:
         if count <= 6
         else f"{_n(float(crossings.span_length.sum()))} in all"
     )
+    unit = place.comparison.units.length
     return Cause(
         "walls",
-        f"Cut crosses {count} walls (t = {walls}). The formula's value is their mean; the field's largest is "
+        f"Cut crosses {count} walls (t = {walls} {unit}). The formula's value is their mean; the field's largest is "
         f"{_n(place.difference.ratio)} times it at {place.where}.",
     )
 
@@ -224,7 +238,8 @@ def _radius(place: _Place) -> Cause | None:
     what = "root radius or taper" if high < _JUNCTION * low else "a junction or a sloping end"
     return Cause(
         "radius",
-        f"The thickness changes from {_n(low)} to {_n(high)} within {_n(2 * step)} of {place.where} ({what}): the stress crowds "
+        f"The thickness changes from {_n(low)} to {place.length(high)} within {place.length(2 * step)} of {place.where} "
+        f"({what}): the stress crowds "
         "at the side that turns, the formula spreads it over t.",
     )
 

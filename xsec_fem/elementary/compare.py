@@ -20,6 +20,7 @@ from xsec_fem.model.outline import Point
 from xsec_fem.model.section import Section
 from xsec_fem.recovery.solved_fields import SolvedFields, shear_only
 from xsec_fem.recovery.stress_field import SectionForces
+from xsec_fem.units import UnitSystem
 
 FloatArray = npt.NDArray[np.float64]
 
@@ -73,7 +74,7 @@ class Compared:
 
 @dataclass(frozen=True)
 class Comparison:
-    """The whole comparison of one pair of shear forces: the sweep perpendicular to V, parts and walls."""
+    """The whole comparison of one pair of shear forces: the sweep perpendicular to V, parts and walls; units for sentences."""
 
     solved: SolvedFields
     forces: SectionForces
@@ -81,6 +82,7 @@ class Comparison:
     sweep: Sweep
     parts: tuple[Compared, ...]
     walls: tuple[Compared, ...]
+    units: UnitSystem
 
     @property
     def largest(self) -> float:
@@ -105,7 +107,7 @@ def compare(
         for number, name in enumerate(solved.mesh.part_names)
     )
     walls = tuple(_compared_wall(table, floor) for table in wall_tables(solved, section, shear))
-    return Comparison(solved, shear, limits, cuts, parts, walls)
+    return Comparison(solved, shear, limits, cuts, parts, walls, section.units)
 
 
 def _compared_part(name: str, field: FloatArray, cuts: Sweep, index: npt.NDArray[np.int64], floor: float) -> Compared:

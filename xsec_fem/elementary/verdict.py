@@ -8,10 +8,11 @@ from dataclasses import dataclass
 import numpy as np
 import numpy.typing as npt
 
-from xsec_fem.elementary.causes import Cause, cause_of
+from xsec_fem.elementary.causes import Cause, cause_of, place_text
 from xsec_fem.elementary.compare import Compared, Comparison, Difference, Limits
 from xsec_fem.elementary.walls import WallTable
 from xsec_fem.model.outline import Point
+from xsec_fem.units import UnitSystem
 
 FloatArray = npt.NDArray[np.float64]
 
@@ -25,7 +26,8 @@ class Finding:
     """One side of one part or wall.
 
     side : "formula too low" (unsafe) or "formula too high". grade : "good", "use with care" or "poor". elasticity, elementary [MPa]
-    at (y, z) [mm]; cause : a code of xsec_fem.elementary.causes, "" when good; message : one or two sentences.
+    at (y, z) [mm]; cause : a code of xsec_fem.elementary.causes, "" when good; message : one or two sentences; reason : the
+    second of them, "" when good.
     """
 
     name: str
@@ -36,6 +38,7 @@ class Finding:
     at: Point
     cause: str
     message: str
+    reason: str = ""
 
     @property
     def ratio(self) -> float:
@@ -102,17 +105,17 @@ def _findings(comparison: Comparison, compared: Compared, normal: FloatArray | N
         cause = Cause("", "")
         if grade != GOOD:
             cause = _cause(comparison, compared.table, difference, normal)
-        message = f"{_numbers(side, difference)} {cause.sentence}".strip()
+        message = f"{_numbers(side, difference, comparison.units)} {cause.sentence}".strip()
         yield Finding(
-            compared.name, side, grade, difference.elasticity, difference.elementary, difference.at, cause.code, message
-        )
+            compared.name, side, grade, difference.elasticity, difference.elementary, difference.at, cause.code, message,
+            cause.sentence,
+        )  # fmt: skip
 
 
-def _numbers(side: str, difference: Difference) -> str:
-    y, z = difference.at
+def _numbers(side: str, difference: Difference, units: UnitSystem) -> str:
     return (
-        f"{side.capitalize()}: elasticity {difference.elasticity:.4g}, V S/(I t) {difference.elementary:.4g}, ratio "
-        f"{difference.ratio:.3g} at ({y:.4g}, {z:.4g})."
+        f"{side.capitalize()}: elasticity {difference.elasticity:.4g} {units.stress}, V S/(I t) {difference.elementary:.4g} "
+        f"{units.stress}, ratio {difference.ratio:.3g} at {place_text(difference.at, units.length)}."
     )
 
 
@@ -122,7 +125,7 @@ def _cause(comparison: Comparison, table: WallTable | None, difference: Differen
     if table.in_closed_cell:
         sentence = (
             "Wall of a closed cell: a cut across it does not separate the section, so no hand cut knows its flow. "
-            f"Compared with the cut through the whole section, {difference.elementary:.4g}."
+            f"Compared with the cut through the whole section, {difference.elementary:.4g} {comparison.units.stress}."
         )
         return Cause("closed cell", sentence)
     return cause_of(comparison, difference, table.direction[difference.row], one_wall=True)
