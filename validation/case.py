@@ -106,6 +106,7 @@ class Record:
     interval : our guaranteed one, None where there is none.
     strict : True when nothing but round-off stands behind the interval.
     difference, allowed : |ours - reference| and the largest one allowed [unit].
+    relative : the tolerance is a share of the reference.
     ok : within the tolerance, and the reference in the strict interval.
     message : why not.
     seconds : spent on the case's solves, shared with the cases of the same section.
@@ -125,9 +126,15 @@ class Record:
     strict: bool
     difference: float | None
     allowed: float
+    relative: bool
     ok: bool
     message: str = ""
     seconds: float = field(default=0.0, compare=False)
+
+    @property
+    def scale(self) -> float:
+        """What difference and allowed are divided by to be shown: |reference| where the tolerance is relative, else 1."""
+        return abs(self.reference) if self.relative else 1.0
 
 
 def judge(case: Case, *results: Result) -> Record:
@@ -165,5 +172,5 @@ def _record(
         case.id, case.group, case.title, case.quantity, case.unit, str(case.source), case.provenance,
         case.tolerance.reason, reference, ours, interval, strict,
         difference=None if ours is None else abs(ours - reference),
-        allowed=case.tolerance.allowed(reference), ok=not faults, message="; ".join(faults),
+        allowed=case.tolerance.allowed(reference), relative=case.tolerance.relative, ok=not faults, message="; ".join(faults),
     )  # fmt: skip

@@ -21,6 +21,7 @@ COMMANDS = {
     "solve": "mesh and solve section files: properties, stresses, joints, pictures",
     "sketch": "check a section file and draw it, without solving",
     "starter": "write a commented section file to start from",
+    "validate": "compare the program with exact solutions and published values, and print the table",
     "doctor": "test what is installed and print the command that mends what is not",
 }
 
@@ -30,7 +31,8 @@ restrained warping, and the rules of any local code. The numbers are elastic and
 A licensed engineer decides what they mean for a structure."""
 
 EXIT_CODES = """\
-exit codes: 0 all fine; 1 a part or joint is over its strength; 2 bad input; 3 meshing, solving or a library failed."""
+exit codes: 0 all fine; 1 a part or joint is over its strength, or a check of validate is missed; 2 bad input;
+3 meshing, solving or a library failed."""
 
 
 def main(argv: Sequence[str] | None = None) -> int:

@@ -1,0 +1,85 @@
+"""The records as tables by group, for people and for machines."""
+
+from __future__ import annotations
+
+import json
+from collections.abc import Iterable, Sequence
+from dataclasses import asdict
+
+from xsec_fem.report.blocks import Block, Heading, Lines, Table
+
+from .case import Record
+
+HEADER = ("", "section", "quantity", "reference", "ours", "guaranteed interval", "difference", "allowed", "source")
+ALIGN = "lllrrlrrl"
+_DIGITS = 9
+_INTERVAL_DIGITS = 10
+
+
+def by_group(records: Iterable[Record]) -> list[tuple[str, list[Record]]]:
+    """Return the records by group, groups in the order of their first record."""
+    order: dict[str, list[Record]] = {}
+    for record in records:
+        order.setdefault(record.group, []).append(record)
+    return list(order.items())
+
+
+def blocks(records: Sequence[Record]) -> list[Block]:
+    """Return one table a group, the misses in words, and the summary line at the end."""
+    content: list[Block] = []
+    for group, members in by_group(records):
+        rows = tuple((*row_cells(record), f"{record.source} ({record.provenance})") for record in members)
+        content += [Heading(group[0].upper() + group[1:]), Table(HEADER, rows, ALIGN)]
+    misses = [f"{record.case_id}: {record.message}" for record in records if not record.ok]
+    if misses:
+        content += [Heading("Misses"), Lines(tuple(misses))]
+    return [*content, Heading("Summary"), Lines((summary_line(records),))]
+
+
+def row_cells(record: Record) -> tuple[str, ...]:
+    """Return the cells of a record: verdict, section, quantity, reference, ours, interval, difference, allowed."""
+    quantity = record.quantity if record.unit == "-" else f"{record.quantity} [{record.unit}]"
+    low_high = record.interval
+    interval = "" if low_high is None else f"[{low_high[0]:.{_INTERVAL_DIGITS}g}, {low_high[1]:.{_INTERVAL_DIGITS}g}]"
+    if low_high is not None and not record.strict:
+        interval += " *"
+    return (
+        "ok" if record.ok else "MISS",
+        record.title,
+        quantity,
+        f"{record.reference:.{_DIGITS}g}",
+        "none" if record.ours is None else f"{record.ours:.{_DIGITS}g}",
+        interval,
+        "" if record.difference is None else _size(record.difference, record),
+        _size(record.allowed, record),
+    )
+
+
+def summary_line(records: Sequence[Record]) -> str:
+    """Return how many checks there are, within what, and how many missed."""
+    misses = sum(not record.ok for record in records)
+    strict = [record for record in records if record.strict]
+    groups = len(by_group(records))
+    text = f"{len(records)} checks in {groups} groups: {len(records) - misses} within their tolerance, {misses} missed"
+    if strict:
+        text += f"; {len(strict)} of them with the reference inside a strictly guaranteed interval of ours"
+        text = (
+            text if not misses else text.replace("of them with", "compared with").replace("the reference inside ", "")
+        )
+    return f"{text}. Intervals marked * leave out the error of curved sides." if _has_loose(records) else f"{text}."
+
+
+def document(records: Sequence[Record]) -> str:
+    """Return the records as JSON: schema, summary, one object a check; numbers bare."""
+    checks = [{key: value for key, value in asdict(record).items() if value is not None} for record in records]
+    misses = sum(not record.ok for record in records)
+    head = {"schema": "xsec_fem validation 1", "checks": len(records), "missed": misses}
+    return json.dumps({**head, "records": checks}, indent=1, ensure_ascii=False, allow_nan=False) + "\n"
+
+
+def _has_loose(records: Sequence[Record]) -> bool:
+    return any(record.interval is not None and not record.strict for record in records)
+
+
+def _size(value: float, record: Record) -> str:
+    return f"{value / record.scale:.1e}" if record.scale else f"{value:.1e}"
