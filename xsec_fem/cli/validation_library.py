@@ -28,12 +28,10 @@ def validation_module(name: str) -> ModuleType:
         )
     if str(checkout) not in sys.path:
         sys.path.insert(0, str(checkout))
-    module = import_module(f"{_CHECKOUT}.{name}")
-    if Path(module.__file__ or "").resolve().parent != checkout / _CHECKOUT:
-        raise MissingLibraryError(
-            f"another package named '{_CHECKOUT}' hides the library of {checkout}: {module.__file__}"
-        )
-    return module
+    found = import_module(_CHECKOUT).__file__
+    if Path(found or "").resolve().parent != checkout / _CHECKOUT:
+        raise MissingLibraryError(f"another package named '{_CHECKOUT}' hides the library of {checkout}: {found}")
+    return import_module(f"{_CHECKOUT}.{name}")
 
 
 def in_checkout() -> bool:
