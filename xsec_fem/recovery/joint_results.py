@@ -18,7 +18,7 @@ from xsec_fem.model.outline import Point
 from xsec_fem.model.section import Bond, Fasteners, Joint
 from xsec_fem.recovery.corners import Corner, corner_mask
 from xsec_fem.recovery.joint_lines import BondLine
-from xsec_fem.recovery.joints import JointFlows
+from xsec_fem.recovery.joints import CutOff, JointFlows
 from xsec_fem.recovery.stress_field import SectionForces
 
 FloatArray = npt.NDArray[np.float64]
@@ -119,13 +119,14 @@ def _present(entry: Mapping[str, Any]) -> dict[str, Any]:
 def joint_result(flows: JointFlows, forces: SectionForces, corners: Sequence[Corner]) -> JointResult:
     """Return one joint under the given forces [N, N mm -> N/mm, MPa]; stresses are read outside the corners' distances."""
     unit, joint = np.array([forces.Vy, forces.Vz, forces.T]), flows.joint
+    cut = flows.cut_for(unit)
     result = JointResult(
-        joint.name, joint.kind, math.fsum(bond.width for bond in flows.bonds), float(flows.flow @ unit),
-        float(flows.separated @ unit), flows.separates, flows.shared_with, remarks=_remarks(flows),
+        joint.name, joint.kind, math.fsum(bond.width for bond in flows.bonds), float(cut.flows.sum(axis=0) @ unit),
+        float(cut.separated @ unit), not cut.shared_with, cut.shared_with, remarks=_remarks(flows, cut),
     )  # fmt: skip
     if not flows.bonds:
         return replace(result, width=flows.slit, by_hand=None)
-    bonds = _bonds(flows, unit, corners)
+    bonds = _bonds(flows, cut, unit, corners)
     if joint.fasteners is not None:
         return _of_fasteners(replace(result, bonds=bonds), joint.fasteners)
     worst = max(bonds, key=lambda bond: abs(bond.peak or 0.0))
@@ -136,18 +137,18 @@ def joint_result(flows: JointFlows, forces: SectionForces, corners: Sequence[Cor
     return replace(result, demand=demand, capacity=joint.strength, required={"strength": demand})
 
 
-def _remarks(flows: JointFlows) -> tuple[str, ...]:
+def _remarks(flows: JointFlows, cut: CutOff) -> tuple[str, ...]:
     if not flows.bonds:
         return ("Contact carries no shear: the faces slide along each other.",)
-    if flows.separates:
+    if not cut.shared_with:
         return ()
-    names = " and ".join(f"'{name}'" for name in (flows.joint.name, *flows.shared_with))
+    names = " and ".join(f"'{name}'" for name in (flows.joint.name, *cut.shared_with))
     return (f"The joint does not separate the section: V S/I gives only the sum over {names}.",)
 
 
-def _bonds(flows: JointFlows, unit: FloatArray, corners: Sequence[Corner]) -> tuple[BondResult, ...]:
+def _bonds(flows: JointFlows, cut: CutOff, unit: FloatArray, corners: Sequence[Corner]) -> tuple[BondResult, ...]:
     """Flow, share and stress of each bond; flows that are round-off of the forces are set to nothing for what is required."""
-    values = [float(value) for value in flows.flows @ unit]
+    values = [float(value) for value in cut.flows @ unit]
     largest, total = max(abs(value) for value in values), math.fsum(values)
     some_total = abs(total) > _NO_TOTAL * largest
     least = _ROUND_OFF * float(np.abs(unit) @ [1 / flows.size, 1 / flows.size, 1 / flows.size**2])

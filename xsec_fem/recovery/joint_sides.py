@@ -16,11 +16,8 @@ from xsec_fem.fem.edges import Edges, connected_bodies, edges_round
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.model.section import Joint, Section
 
-FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
 BoolArray = npt.NDArray[np.bool_]
-
-_EQUAL = 1e-9  # supplies nearer than this share are equal: the round-off of their sums
 
 
 @dataclass(frozen=True)
@@ -65,26 +62,20 @@ class JointSide:
     shared_with: tuple[str, ...]
 
 
-def joint_side(connections: Connections, mesh: Mesh, edges: Edges, joint: Joint, supply: FloatArray) -> JointSide:
-    """Return the side that the joint cuts off, of two candidates: what hangs on its first parts, or all that does not hang on
-    its second ones.
+def joint_sides(connections: Connections, mesh: Mesh, edges: Edges, joint: Joint) -> list[JointSide]:
+    """Return what the joint cuts off: one side when it separates the section, else two candidates.
 
-    The one whose line crosses the fewest other connections is taken, then the one with the larger supply; `supply` (M, k) is
-    ∫ E f of each triangle for shear.
+    They are what hangs on its first parts, and all that does not hang on its second ones.
     """
     first = _triangles_of(mesh, joint.first)
     second = _triangles_of(mesh, {*joint.second, *connections.beads(joint)})
-    masks = (_grown(mesh, edges, first, second), ~_grown(mesh, edges, second, first))
-    lines = [edges_round(edges, mask) for mask in masks]
-    sides = [
-        JointSide(mask, line, _others(connections, mesh, edges, joint, line))
-        for mask, line in zip(masks, lines, strict=True)
-    ]
-    here, there = (len(side.shared_with) for side in sides)
-    if here != there:
-        return sides[0 if here < there else 1]
-    size = [float(np.linalg.norm(supply[side.inside].sum(axis=0))) for side in sides]
-    return sides[0 if size[0] >= size[1] * (1 - _EQUAL) else 1]
+    sides = []
+    for mask in (_grown(mesh, edges, first, second), ~_grown(mesh, edges, second, first)):
+        line = edges_round(edges, mask)
+        sides.append(JointSide(mask, line, _others(connections, mesh, edges, joint, line)))
+        if not sides[-1].shared_with:
+            return sides[-1:]
+    return sides
 
 
 def _triangles_of(mesh: Mesh, names: Iterable[str]) -> BoolArray:

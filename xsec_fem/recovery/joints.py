@@ -22,7 +22,7 @@ from xsec_fem.fem.slits import facing_edges
 from xsec_fem.model.section import Joint
 from xsec_fem.recovery.corners import Corner
 from xsec_fem.recovery.joint_lines import BondLine, bond_lines
-from xsec_fem.recovery.joint_sides import Connections, JointSide, joint_side
+from xsec_fem.recovery.joint_sides import Connections, JointSide, joint_sides
 from xsec_fem.recovery.stress_field import UnitFields
 from xsec_fem.theory.stiffness import ShearStiffness
 from xsec_fem.theory.warping import POISSON, SHEAR, TORSION, Warping
@@ -32,38 +32,64 @@ IntArray = npt.NDArray[np.int64]
 
 
 @dataclass(frozen=True)
+class CutOff:
+    """What a joint cuts off, and what flows there under unit Vy, Vz (through the shear centre) and T.
+
+    Attributes
+    ----------
+    flows : (B, 3) flow of each bond [N/mm per N, per N mm].
+    separated : (3,) -∫_A E f of the material cut off: "V S/I".
+    shared_with : other joints and contacts among which V S/I is shared; empty when the joint separates the section.
+    """
+
+    flows: FloatArray
+    separated: FloatArray
+    shared_with: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True)
 class JointFlows:
-    """A joint's flows under unit Vy, Vz (through the shear centre) and T, before any load case.
+    """A joint before any load case.
 
     Attributes
     ----------
     joint : as declared.
     bonds : what carries: the whole line of a glue joint, the beads of a weld, the rows of fasteners; none of contact.
-    flows : (B, 3) flow of each bond [N/mm per N, per N mm].
+    cuts : one when the joint separates the section, else two, the one with the larger V S/I of unit forces first.
     slit : length of the faying faces that slide on each other [mm].
-    separated : (3,) -∫_A E f of the side that is cut off: "V S/I".
-    shared_with : other joints and contacts among which V S/I is shared; empty when the joint separates the section.
     size : of the section, tells round-off from flow [mm].
     """
 
     joint: Joint
     bonds: tuple[BondLine, ...]
-    flows: FloatArray
+    cuts: tuple[CutOff, ...]
     slit: float
-    separated: FloatArray
-    shared_with: tuple[str, ...]
     size: float
 
     @property
     def flow(self) -> FloatArray:
         """(3,) flow of the whole joint [N/mm per N, per N mm]."""
-        total: FloatArray = self.flows.sum(axis=0)
+        total: FloatArray = self.cuts[0].flows.sum(axis=0)
         return total
+
+    @property
+    def separated(self) -> FloatArray:
+        """(3,) V S/I of what is cut off [N/mm per N, per N mm]."""
+        return self.cuts[0].separated
+
+    @property
+    def shared_with(self) -> tuple[str, ...]:
+        """Names of those that share it."""
+        return self.cuts[0].shared_with
 
     @property
     def separates(self) -> bool:
         """True when the joint alone separates the section."""
         return not self.shared_with
+
+    def cut_for(self, unit: FloatArray) -> CutOff:
+        """Return the cut whose V S/I under the forces (3,) is the larger: the one a hand calculation would make."""
+        return max(self.cuts, key=lambda cut: abs(float(cut.separated @ unit)))
 
 
 @dataclass(frozen=True)
@@ -119,14 +145,21 @@ def _flows(
 ) -> JointFlows:  # fmt: skip
     mesh = fields.part_nodes.mesh
     slit, size = _slit_length(fields, edges, joint), float(np.ptp(mesh.nodes, axis=0).max())
-    side = joint_side(connections, mesh, edges, joint, forces.supply[:, SHEAR])
-    bonds = tuple(bond_lines(joint, fields, edges, side.inside, corners))
+    sides = joint_sides(connections, mesh, edges, joint)
+    bonds = tuple(bond_lines(joint, fields, edges, sides[0].inside, corners))
     if not bonds:
-        return JointFlows(joint, (), np.zeros((0, 3)), slit, np.zeros(3), (), size)
+        return JointFlows(joint, (), (CutOff(np.zeros((0, 3)), np.zeros(3)),), slit, size)
     weights = np.stack([edge_weights(mesh, edges, bond.edges)[0] for bond in bonds])
-    flows = _unit_columns(_tractions(forces, fields, edges, side, weights), stiffness)
-    separated = _unit_columns(forces.supply[side.inside].sum(axis=0)[None], stiffness)[0]
-    return JointFlows(joint, bonds, flows, slit, separated, side.shared_with, size)
+    cuts = [
+        CutOff(
+            _unit_columns(_tractions(forces, fields, edges, side, weights), stiffness),
+            _unit_columns(forces.supply[side.inside].sum(axis=0)[None], stiffness)[0],
+            side.shared_with,
+        )
+        for side in sides
+    ]
+    cuts.sort(key=lambda cut: -float(np.linalg.norm(cut.separated[:2])))
+    return JointFlows(joint, bonds, tuple(cuts), slit, size)
 
 
 def _tractions(
