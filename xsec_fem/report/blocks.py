@@ -9,7 +9,7 @@ from typing import TextIO
 
 @dataclass(frozen=True)
 class Heading:
-    """A title of the summary; `level` 1 for the whole, 2 for its chapters."""
+    """A title of the summary; `level` 1 for the whole, 2 for its chapters, 3 within a chapter."""
 
     text: str
     level: int = 2
@@ -44,7 +44,8 @@ def plain_text(blocks: Iterable[Block]) -> str:
     lines: list[str] = []
     for block in blocks:
         if isinstance(block, Heading):
-            lines += [""] * bool(lines) + [block.text] + (["=" * len(block.text)] if block.level == 1 else [])
+            indent = "  " if block.level == 3 else ""
+            lines += [""] * bool(lines) + [indent + block.text] + (["=" * len(block.text)] if block.level == 1 else [])
         elif isinstance(block, Lines):
             lines += [f"  {line}" for line in block.lines]
         else:
@@ -66,7 +67,7 @@ def print_blocks(blocks: Sequence[Block], stream: TextIO) -> None:
         if isinstance(block, Heading):
             if number:
                 console.print()
-            console.print(Text(block.text, style="bold" if block.level == 2 else "bold underline"))
+            console.print(Text(block.text, style={1: "bold underline", 2: "bold", 3: "italic"}[block.level]))
         elif isinstance(block, Lines):
             for line in block.lines:
                 console.print(Padding(Text(line), (0, 0, 0, 2)))

@@ -1,24 +1,32 @@
-"""One load case in words and tables: largest stresses, parts, joints, probes."""
+"""One load case in words and tables: largest stresses, parts, joints, cuts, probes, corners, the verdict on V S/(I t)."""
 
 from __future__ import annotations
 
 from xsec_fem.recovery.largest import Largest
-from xsec_fem.report.blocks import Block, Lines, Table
+from xsec_fem.report.blocks import Block, Heading, Lines, Table
+from xsec_fem.report.corner_blocks import corner_readings
+from xsec_fem.report.cut_blocks import cut_blocks
 from xsec_fem.report.joint_blocks import joint_blocks, utilisation_text
 from xsec_fem.report.numbers import number, point
+from xsec_fem.report.verdict_blocks import verdict_blocks
 from xsec_fem.report.wording import actions_text, load_point_text, section_size
 from xsec_fem.results import CaseResult, Result
 
 
-def case_blocks(result: Result, case: CaseResult) -> list[Block]:
-    """Return the summary of one case; stresses, flows and lengths in the file's units, written beside them."""
+def case_blocks(result: Result, case: CaseResult, hand: bool = False) -> list[Block]:
+    """Return the summary of one case; stresses, flows and lengths in the file's units, written beside them.
+
+    With `hand` the hand calculation of every named cut is there symbol by symbol.
+    """
     blocks: list[Block] = [Lines(_head(result, case)), _parts(result, case)]
     if any(part.tau_max.beside_corner for part in case.parts):
         blocks.append(Lines(("* read beside a corner without limit, which governs it",)))
-    blocks += joint_blocks(result, case)
+    if case.joints:
+        blocks += [Heading("joints", 3), *joint_blocks(result, case)]
+    blocks += cut_blocks(result, case, hand)
     if case.probes:
-        blocks.append(_probes(result, case))
-    return blocks
+        blocks += [Heading("probes", 3), _probes(result, case)]
+    return blocks + corner_readings(result, case) + verdict_blocks(result, case)
 
 
 def _head(result: Result, case: CaseResult) -> tuple[str, ...]:
