@@ -55,6 +55,17 @@ class BondResult:
 
 
 @dataclass(frozen=True)
+class JointProfile:
+    """Shear across a glue line or the throat of a bead, to draw.
+
+    places : (L, n, 2) [mm], L lines of n points each in order; across : (L, n) tau . n there [stress], n from the first side out.
+    """
+
+    places: FloatArray
+    across: FloatArray
+
+
+@dataclass(frozen=True)
 class JointResult:
     """A joint under one load case.
 
@@ -70,6 +81,7 @@ class JointResult:
     required : "strength" for glue, "throat" (and "leg") for a weld, "spacing" for fasteners.
     bonds : the beads or rows.
     remarks : what must be said beside the numbers.
+    profiles : one a glue line or bead; not in results.json.
     """
 
     name: str
@@ -87,6 +99,7 @@ class JointResult:
     required: Mapping[str, float] = field(default_factory=dict)
     bonds: tuple[BondResult, ...] = ()
     remarks: tuple[str, ...] = ()
+    profiles: tuple[JointProfile, ...] = field(default=(), repr=False, compare=False)
 
     @property
     def utilisation(self) -> float | None:
@@ -100,8 +113,11 @@ class JointResult:
 
     def to_dict(self) -> dict[str, Any]:
         """Return the entry of results.json; keys without a value are left out, bonds are "beads" or "rows"."""
-        entry = _present(asdict(self)) | _present({"utilisation": self.utilisation, "margin": self.margin})
+        entry = _present(asdict(replace(self, profiles=()))) | _present(
+            {"utilisation": self.utilisation, "margin": self.margin}
+        )
         bonds = [_present(bond) for bond in entry.pop("bonds")]
+        del entry["profiles"]
         for key in ("shared_with", "required", "remarks"):
             if not entry[key]:
                 del entry[key]
@@ -130,7 +146,8 @@ def joint_result(flows: JointFlows, forces: SectionForces, corners: Sequence[Cor
     if joint.fasteners is not None:
         return _of_fasteners(replace(result, bonds=bonds), joint.fasteners)
     worst = max(bonds, key=lambda bond: abs(bond.peak or 0.0))
-    result = replace(result, mean=result.flow / result.width, peak=worst.peak, peak_at=worst.peak_at)
+    profiles = tuple(_profile(bond, unit, joint) for bond in flows.bonds if len(bond.places))
+    result = replace(result, mean=result.flow / result.width, peak=worst.peak, peak_at=worst.peak_at, profiles=profiles)
     if joint.weld is not None:
         return _of_weld(replace(result, bonds=bonds), joint)
     demand = abs(result.flow / result.width)
@@ -174,6 +191,12 @@ def _stressed(bond: BondLine, unit: FloatArray, corners: Sequence[Corner]) -> Bo
     top = int(np.argmax(np.where(clear if clear.any() else True, np.abs(across), -1.0)))
     place = (float(bond.places[top, 0]), float(bond.places[top, 1]))
     return replace(plain, peak=float(across[top]), peak_at=place, root_distance=bond.root_distance or None)
+
+
+def _profile(bond: BondLine, unit: FloatArray, joint: Joint) -> JointProfile:
+    """The stress at the bond's places: edge by edge of the mesh along a glue line, from root to surface of a bead."""
+    lines = len(bond.edges) if joint.kind == "glue" else 1
+    return JointProfile(bond.places.reshape(lines, -1, 2), (bond.across @ unit).reshape(lines, -1))
 
 
 def _required(joint: Joint, index: int, flow: float) -> float | None:
