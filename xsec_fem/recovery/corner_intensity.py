@@ -32,7 +32,7 @@ def corner_intensities(warping: Warping, stiffness: ShearStiffness, corners: Seq
     """
     result = np.full((len(corners), 3), np.nan)
     for row, corner in enumerate(corners):
-        mode = wedge_mode(corner.sectors, corner.exponent + 1.0)
+        mode = wedge_mode(corner.sectors, corner.exponent + 1.0, corner.inside)
         if mode is not None:
             amplitude = _amplitudes(warping, corner, mode)
             unit = np.append(amplitude[SHEAR] + amplitude[POISSON], amplitude[TORSION] / stiffness.GIT)

@@ -1,12 +1,13 @@
-"""Corners of the free boundary where the stress grows without limit, found on the mesh.
+"""Corners where the stress grows without limit, found on the mesh: of the free boundary and between materials.
 
-A corner is listed when its stress exponent lambda - 1 is below -0.01 (at a tenth of the wall the stress there is then more than
-2 % above its surroundings): re-entrant corners of one material from about 182 deg up, and ends of lines between materials.
+A corner is listed when its stress exponent lambda - 1 is below -0.01 (at a tenth of the wall the stress there is then more
+than 2 % above its surroundings): re-entrant corners of one material from 185 deg up, ends of lines between materials on the
+boundary, and points inside where such lines bend or meet.
 """
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -14,7 +15,8 @@ import numpy.typing as npt
 
 from xsec_fem.fem.edges import Edges
 from xsec_fem.fem.mesh import Mesh
-from xsec_fem.theory.corner_exponent import Sector, wedge_exponent
+from xsec_fem.recovery.corner_fans import fan_round, fan_sectors, sector_directions
+from xsec_fem.theory.corner_exponent import Sector, closed_wedge_exponent, wedge_exponent
 
 FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
@@ -22,11 +24,6 @@ IntArray = npt.NDArray[np.int64]
 SHARE_OF_WALL = 0.1  # distance from a corner at which stresses are read, as a share of the thinner adjoining wall
 _WEAKEST = -0.01  # exponents above this are not listed (module docstring)
 _SMOOTH_DEG = 5.0  # a free boundary that bends less than this at a node is a facet or a curve, not a corner
-
-# directions in the reference triangle from a corner along its leaving edge (to the next corner) and its arriving edge
-_LEAVING = np.array([[1.0, 0.0], [-1.0, 1.0], [0.0, -1.0]])
-_ARRIVING = np.array([[0.0, 1.0], [-1.0, 0.0], [1.0, -1.0]])
-_CORNERS = np.array([[0.0, 0.0], [1.0, 0.0], [0.0, 1.0]])
 
 
 @dataclass(frozen=True)
@@ -56,20 +53,14 @@ class Corner:
     part: int
 
     @property
+    def inside(self) -> bool:
+        """True when material goes all round the point."""
+        return self.angle_deg > 359.999 and len(self.sectors) > 1
+
+    @property
     def directions(self) -> tuple[float, float]:
         """(start, end) of the material, counter-clockwise from +y [rad]."""
         return self.sectors[0].start, self.sectors[-1].end
-
-
-def _sector_directions(mesh: Mesh) -> tuple[FloatArray, FloatArray]:
-    """(M, 3) direction of the leaving edge at each corner, and the angle to the arriving edge, in (0, 2 pi) [rad]."""
-    gradients = mesh.element.gradients(_CORNERS)
-    jacobian = np.einsum("cnr,mnd->mcdr", gradients, mesh.nodes[mesh.triangles])
-    leaving = np.einsum("mcdr,cr->mcd", jacobian, _LEAVING)
-    arriving = np.einsum("mcdr,cr->mcd", jacobian, _ARRIVING)
-    start = np.arctan2(leaving[..., 1], leaving[..., 0])
-    end = np.arctan2(arriving[..., 1], arriving[..., 0])
-    return start, (end - start) % (2 * np.pi)
 
 
 def _candidates(mesh: Mesh, edges: Edges, angles: FloatArray) -> IntArray:
@@ -107,24 +98,13 @@ def _wall(place: FloatArray, directions: tuple[float, float], segments: FloatArr
 
 
 def find_corners(mesh: Mesh, edges: Edges, G: FloatArray, distance: float | None = None) -> tuple[Corner, ...]:
-    """Return the singular corners of the free boundary, sorted by place; G (P, 2, 2) per part [MPa].
+    """Return the singular corners of the free boundary and of lines between materials, sorted by place; G (P, 2, 2) per part [MPa].
 
     `distance` [mm] is where stresses beside a corner are read; a tenth of the thinner adjoining wall when None.
     Source of the exponents: xsec_fem.theory.corner_exponent.
     """
-    start, angle = _sector_directions(mesh)
-    segments = mesh.nodes[edges.corners[edges.free]]
-    free_edge = np.zeros(len(edges.corners), bool)
-    free_edge[edges.free] = True
-    leaves_free = free_edge[edges.of_triangle]
-    flat = mesh.triangles[:, :3].ravel()
-    found = []
-    for node in _candidates(mesh, edges, angle):
-        uses = np.flatnonzero(flat == node)
-        for first in uses[leaves_free.ravel()[uses]]:
-            corner = _corner_of_fan(mesh, G, (start, angle), _fan(mesh, edges, int(first)), segments)
-            if corner is not None:
-                found.append(corner)
+    directions = sector_directions(mesh)
+    found = [*_free_corners(mesh, edges, G, directions), *_inner_corners(mesh, edges, G, directions)]
     found = _apart(found) if distance is None else [replace(corner, distance=distance) for corner in found]
     return tuple(sorted(found, key=lambda corner: (corner.y, corner.z)))
 
@@ -148,46 +128,85 @@ def corner_mask(places: FloatArray, corners: Sequence[Corner]) -> npt.NDArray[np
     return clear
 
 
-def _fan(mesh: Mesh, edges: Edges, first: int) -> list[tuple[int, int]]:
-    """(triangle, corner) pairs around a node, counter-clockwise, from one that leaves along a free edge to the other side."""
-    triangle, corner = divmod(first, 3)
-    node = mesh.triangles[triangle, corner]
-    fan = [(triangle, corner)]
-    while True:
-        edge = edges.of_triangle[triangle, (corner + 2) % 3]  # the arriving edge
-        sides = edges.triangles[edge]
-        following = sides[1] if sides[0] == triangle else sides[0]
-        if following < 0:
-            return fan
-        triangle = int(following)
-        corner = int(np.flatnonzero(mesh.triangles[triangle, :3] == node)[0])
-        fan.append((triangle, corner))
+def _free_corners(
+    mesh: Mesh, edges: Edges, G: FloatArray, directions: tuple[FloatArray, FloatArray]
+) -> Iterator[Corner]:
+    """Singular corners of the free boundary; slits and pinched nodes have one fan a side."""
+    segments = mesh.nodes[edges.corners[edges.free]]
+    free_edge = np.zeros(len(edges.corners), bool)
+    free_edge[edges.free] = True
+    leaves_free = free_edge[edges.of_triangle].ravel()
+    flat = mesh.triangles[:, :3].ravel()
+    for node in _candidates(mesh, edges, directions[1]):
+        uses = np.flatnonzero(flat == node)
+        for first in uses[leaves_free[uses]]:
+            fan = fan_round(mesh, edges, int(first))
+            sectors, parts = fan_sectors(mesh, G, directions, fan)
+            turn = sectors[-1].end - sectors[0].start
+            if len(sectors) == 1 and turn < np.pi + np.radians(_SMOOTH_DEG):
+                continue
+            exponent = wedge_exponent(sectors) - 1.0
+            if exponent <= _WEAKEST:
+                place = mesh.nodes[node]
+                wall = _wall(place, (sectors[0].start, sectors[-1].end), segments)
+                yield _corner(mesh, place, exponent, parts, wall, sectors, int(mesh.part_of[fan[0][0]]))
 
 
-def _corner_of_fan(
-    mesh: Mesh, G: FloatArray, sectors: tuple[FloatArray, FloatArray], fan: list[tuple[int, int]], segments: FloatArray
-) -> Corner | None:
-    """The corner of one fan of triangles, or None when it is not singular."""
-    start, angle = sectors
-    wedge: list[Sector] = []
-    parts: list[str] = []
-    direction = first = float(start[fan[0]])
-    for triangle, corner in fan:
-        part = mesh.part_of[triangle]
-        wedge.append(Sector(direction, direction + float(angle[triangle, corner]), G[part]))
-        direction = wedge[-1].end
-        if mesh.part_names[part] not in parts:
-            parts.append(mesh.part_names[part])
-    if len(
-        {G[mesh.part_of[triangle]].tobytes() for triangle, _ in fan}
-    ) == 1 and direction - first < np.pi + np.radians(_SMOOTH_DEG):
-        return None
-    exponent = wedge_exponent(wedge) - 1.0
-    if exponent > _WEAKEST:
-        return None
-    place = mesh.nodes[mesh.triangles[fan[0]]]
-    wall = _wall(place, (first, direction), segments)
-    return Corner(
-        float(place[0]), float(place[1]), float(np.degrees(direction - first)), exponent, tuple(parts), wall,
-        SHARE_OF_WALL * wall, tuple(wedge), int(mesh.part_of[fan[0][0]]),
-    )  # fmt: skip
+def _inner_corners(
+    mesh: Mesh, edges: Edges, G: FloatArray, directions: tuple[FloatArray, FloatArray]
+) -> Iterator[Corner]:
+    """Singular points inside the section, where materials of different G meet at an angle."""
+    flat = mesh.triangles[:, :3].ravel()
+    for node in _inner_candidates(mesh, edges, G, directions[1]):
+        fan = fan_round(mesh, edges, int(np.flatnonzero(flat == node)[0]))
+        sectors, parts = fan_sectors(mesh, G, directions, fan)
+        exponent = closed_wedge_exponent(sectors) - 1.0
+        if exponent <= _WEAKEST:
+            wall = _smallest_part(mesh, parts)
+            yield _corner(mesh, mesh.nodes[node], exponent, parts, wall, sectors, int(mesh.part_of[fan[0][0]]))
+
+
+def _inner_candidates(mesh: Mesh, edges: Edges, G: FloatArray, angles: FloatArray) -> IntArray:
+    """Inner nodes on lines between materials, but for those where a single line passes straight through."""
+    inner = np.flatnonzero(edges.triangles[:, 1] >= 0)
+    parts = mesh.part_of[edges.triangles[inner]]
+    between: IntArray = inner[(G[parts[:, 0]] != G[parts[:, 1]]).any(axis=(1, 2))]
+    if not len(between):
+        return between
+    size = len(mesh.nodes)
+    lines = np.bincount(edges.corners[between].ravel(), minlength=size)
+    on_boundary = np.zeros(size, bool)
+    on_boundary[edges.corners[edges.free]] = True
+    _, kind = np.unique(G.reshape(len(G), 4), axis=0, return_inverse=True)
+    first = np.full(size, -1)
+    corners = mesh.triangles[:, :3]
+    first[corners] = kind.ravel()[mesh.part_of][:, None]  # the material of any one triangle there
+    mine = first[corners] == kind.ravel()[mesh.part_of][:, None]
+    angle = np.bincount(corners[mine], angles[mine], minlength=size)
+    straight = (lines == 2) & (np.abs(angle - np.pi) < np.radians(_SMOOTH_DEG))
+    chosen: IntArray = np.flatnonzero((lines > 0) & ~on_boundary & ~straight)
+    return chosen
+
+
+def _smallest_part(mesh: Mesh, parts: Sequence[str]) -> float:
+    """Shortest side of the bounding boxes of the named parts [mm]."""
+    sides = []
+    for name in parts:
+        mine = mesh.triangles[mesh.part_of == mesh.part_names.index(name)]
+        sides.append(float(np.ptp(mesh.nodes[np.unique(mine)], axis=0).min()))
+    return min(sides)
+
+
+def _corner(
+    mesh: Mesh,
+    place: FloatArray,
+    exponent: float,
+    parts: tuple[str, ...],
+    wall: float,
+    sectors: tuple[Sector, ...],
+    part: int,
+) -> Corner:
+    y, z = place.tolist()
+    turn = float(np.degrees(sectors[-1].end - sectors[0].start))
+    limit = float(np.ptp(mesh.nodes, axis=0).max())  # a ray that meets nothing leaves the section's size
+    return Corner(y, z, turn, exponent, parts, min(wall, limit), SHARE_OF_WALL * min(wall, limit), sectors, part)

@@ -20,6 +20,7 @@ import numpy.typing as npt
 
 FloatArray = npt.NDArray[np.float64]
 
+_SCAN = 200  # steps of the search for a sign change: modes of a closed wedge split by less are not singular to 0.5 %
 _BISECTIONS = 54  # halvings of (0, 1]: 2^-54 is below round-off
 
 
@@ -73,9 +74,40 @@ def wedge_exponent(sectors: Sequence[Sector]) -> float:
     return (low + high) / 2
 
 
+def closed_wedge_exponent(sectors: Sequence[Sector]) -> float:
+    """Return lambda where materials meet all round a point, sectors counter-clockwise; 1.0 when no root lies in (0, 1).
+
+    The pair carried once round must return to itself: det(M - 1) = det M + 1 - tr M = 0. From ray to ray it is scaled by
+    (rho_k/rho_k+1)^lambda, rho = |G^(-1/2) e| along the ray: 1 for isotropic sectors. Source: Williams 1952 (module docstring), the
+    closing condition derived here; angles in rad, G (2, 2) in MPa.
+    """
+    grid = np.arange(1, _SCAN) / _SCAN
+    values = np.array([_closing(sectors, lam) for lam in grid])
+    change = np.flatnonzero(values < 0)
+    if not len(change):
+        return 1.0
+    low, high = (grid[change[0] - 1] if change[0] else 0.0), grid[change[0]]
+    for _ in range(_BISECTIONS):
+        middle = (low + high) / 2
+        low, high = (low, middle) if _closing(sectors, middle) < 0 else (middle, high)
+    return float((low + high) / 2)
+
+
+def _closing(sectors: Sequence[Sector], lam: float) -> float:
+    """det(M - 1) of one turn: positive for small lam, negative between the two modes that contrast has split."""
+    M = np.eye(2)
+    for sector, following in zip(sectors, [*sectors[1:], sectors[0]], strict=True):
+        angle, g = sector.mapped()
+        c, s = np.cos(lam * angle), np.sin(lam * angle)
+        ray = np.array([np.cos(sector.end), np.sin(sector.end)])
+        rho = [np.sqrt(ray @ np.linalg.solve(G, ray)) for G in (sector.G, following.G)]
+        M = (rho[0] / rho[1]) ** lam * np.array([[c, s / g], [-g * s, c]]) @ M
+    return float(np.linalg.det(M) + 1 - np.trace(M))
+
+
 @dataclass(frozen=True)
 class WedgeMode:
-    """The singular mode u = r^lam phi(angle) of a wedge of isotropic sectors, phi scaled to 1 on the first free side.
+    """The singular mode u = r^lam phi(angle) of a wedge of isotropic sectors, phi is 1 on the first free side where there is one.
 
     In sector k, with angle b from its start, phi = cosine[k] cos(lam b) + sine[k] sin(lam b).
     """
@@ -98,19 +130,24 @@ class WedgeMode:
         return float((g * self.lam * np.hypot(self.cosine, self.sine)).max())
 
 
-def wedge_mode(sectors: Sequence[Sector], lam: float) -> WedgeMode | None:
+def wedge_mode(sectors: Sequence[Sector], lam: float, closed: bool = False) -> WedgeMode | None:
     """Return the mode of the exponent lam, (n,) coefficients, or None when a sector is not isotropic (G in MPa).
+
+    `closed` sectors go all round a point; the others have free sides.
 
     Source: Williams 1952 (module docstring).
     """
     if any(not np.allclose(sector.G, sector.G[0, 0] * np.eye(2), rtol=1e-12) for sector in sectors):
         return None
-    u, w = 1.0, 0.0
-    cosine, sine = [], []
+    carried = np.eye(2)
+    turns = []
     for sector in sectors:
-        g = sector.G[0, 0]
-        cosine.append(u)
-        sine.append(w / g)
-        c, s = np.cos(lam * sector.angle), np.sin(lam * sector.angle)
-        u, w = c * u + s * w / g, -g * s * u + c * w
-    return WedgeMode(tuple(sectors), lam, np.array(cosine), np.array(sine))
+        g, c, s = sector.G[0, 0], np.cos(lam * sector.angle), np.sin(lam * sector.angle)
+        turns.append(carried)
+        carried = np.array([[c, s / g], [-g * s, c]]) @ carried
+    start = np.array([1.0, 0.0])
+    if closed:  # the pair that one turn carries into itself
+        start = np.linalg.svd(carried - np.eye(2))[2][-1]
+    pairs = np.array([turn @ start for turn in turns])
+    cosine, sine = pairs[:, 0], pairs[:, 1] / [sector.G[0, 0] for sector in sectors]
+    return WedgeMode(tuple(sectors), lam, cosine, sine)
