@@ -26,13 +26,13 @@ def test_the_summary_and_the_files(boards, here, capsys):
     assert main(["solve", str(boards)]) == 0
     out, err = capsys.readouterr()
     assert err == ""
-    assert headings(out) == [
-        "Two boards", "Section properties (over reference material board)", "Load case: support", "Parts that touch",
-        "Checks of the solution", "Files written",
-    ]  # fmt: skip
+    chapters = ["Two boards", "Section properties", "Load case: support", "Parts that touch", "Checks", "Files written"]
+    told = headings(out)
+    places = [next(k for k, line in enumerate(told) if line.startswith(chapter)) for chapter in chapters]
+    assert places == sorted(places)
+    assert (places[0], places[-1]) == (0, len(told) - 1)
     written = [line.strip() for line in out.split("Files written\n")[1].splitlines()]
     folder = here / "out" / "boards"
-    assert written == sorted(written, key=written.index)
     assert {path.split("/")[-1] for path in written} == {path.name for path in folder.iterdir()}
     assert {"results.json", "fields.vtu", "joints.csv", "sketch.png", "tau_xz.png", "tau_xy.png", "tau.png"} <= {
         path.name for path in folder.iterdir()
@@ -102,7 +102,7 @@ def test_all_faults_of_a_file_on_stderr_one_a_line(here, capsys):
     assert not (here / "out").exists()
 
 
-@pytest.mark.parametrize("order", [1, 2, 3])
+@pytest.mark.parametrize("order", [3, 5])
 def test_order_wins_over_the_file(boards, here, order):
     assert main(["solve", str(boards), "--order", str(order), "--quiet", "--no-pictures"]) == 0
     assert json.loads((here / "out" / "boards" / "results.json").read_text())["mesh"]["order"] == order

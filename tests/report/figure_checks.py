@@ -36,10 +36,8 @@ def assert_texts_on_page(figure) -> None:
 
 
 def assert_headings_and_notes_apart(figure) -> None:
-    """Texts of the page itself overlap neither each other nor any axes with its labels."""
-    canvas = FigureCanvasAgg(figure)
-    canvas.draw()
-    renderer = canvas.get_renderer()
+    """Texts of the page itself overlap neither each other nor any axes with its labels; the figure must be drawn already."""
+    renderer = figure.canvas.get_renderer()
     boxes = [(text.get_text(), text.get_window_extent(renderer)) for text in figure.texts]
     boxes += [(f"axes {k}", axes.get_tightbbox(renderer)) for k, axes in enumerate(figure.axes)]
     for (a, box_a), (b, box_b) in combinations(boxes, 2):

@@ -20,9 +20,10 @@ _FINEST = 12  # divisions of a triangle's side at most, when looking for places
 _FULL = 0.75  # a cell of the grid filled to this share with material has its arrow in the middle
 
 
-def direction_arrows(stress: StressField, box: Box, spacing: float) -> tuple[FloatArray, FloatArray]:
+def direction_arrows(stress: StressField, box: Box, spacing: float, largest: float) -> tuple[FloatArray, FloatArray]:
     """Return places and unit directions of tau, (K, 2) each, inside a box (y0, z0, y1, z1) at about `spacing` [mm].
 
+    `largest` is the largest |tau| away from singular corners [MPa]: where tau is small beside it there is no arrow.
     One arrow a square cell: in its middle when that is full of material, else next to the middle of the material in it.
     """
     dense = _dense_points(stress, box, spacing / 5)
@@ -40,7 +41,7 @@ def direction_arrows(stress: StressField, box: Box, spacing: float) -> tuple[Flo
     at, along = _moved(stress, dense, chosen, target, full)
     size = np.hypot(*along.T)
     kept = _thinned(at, np.minimum(area, spacing**2), _CLOSEST * spacing)
-    kept = kept[size[kept] > _FAINT * stress.tau.max()]
+    kept = kept[size[kept] > _FAINT * largest]
     return at[kept], along[kept] / size[kept, None]
 
 

@@ -219,7 +219,7 @@ class _Fill:
                 axes.add_patch(ring)
 
     def _directions(self, axes: Axes, box: Box, inches: float) -> None:
-        places, along = direction_arrows(self.case.stress, box, _ARROW_SPACING / inches)
+        places, along = direction_arrows(self.case.stress, box, _ARROW_SPACING / inches, self.case.tau_max.value)
         if len(places):
             axes.quiver(
                 *places.T, *along.T, angles="xy", pivot="mid", units="inches", scale_units="inches",
