@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
+from typing import Any
 
-Value = float | int | str | bool | Sequence["Value"]
-Table = Mapping[str, "Value | Table | Sequence[Table]"]
+Table = Mapping[str, Any]  # of numbers, texts, lists of them and tables; `toml` refuses anything else
 
 E_UNIT = 2.0  # E of the sections whose results do not depend on it
 
@@ -60,7 +60,7 @@ def toml(value: object) -> str:
     if isinstance(value, str):
         return '"' + value.replace("\\", "\\\\").replace('"', '\\"') + '"'
     if isinstance(value, int | float):
-        return repr(float(value)) if isinstance(value, float) else repr(value)
+        return repr(float(value) if isinstance(value, float) else int(value))
     if isinstance(value, Mapping):
         return "{" + ", ".join(f"{key} = {toml(entry)}" for key, entry in value.items()) + "}"
     if isinstance(value, Sequence):

@@ -7,6 +7,7 @@ Lengths and forces are pure numbers, y to the right, z up. "T&G" is S. P. Timosh
 from __future__ import annotations
 
 import numpy as np
+from scipy.special import beta
 
 from .series import TERMS, FloatArray, over_cosh
 
@@ -74,3 +75,29 @@ def equilateral_triangle_flexure(y: FloatArray, z: FloatArray, a: float) -> Floa
     """Stress under V = 1 at nu = 1/2, corners (±sqrt(3) a, -a) and (0, 2a); T&G treat the case, this form was derived here."""
     second_moment = 1.5 * np.sqrt(3) * a**4
     return np.asarray(np.stack([-y * (a + z), (2 * a - z) * (a + z)], axis=-1) / (3 * second_moment))
+
+
+def ellipse_shear_coefficient(across: float, along: float, nu: float) -> float:
+    """1/(A ∫tau²) of the field above, half axes `across` the load and `along` it; exact quadrature of a polynomial of degree 4."""
+    x, weight = np.polynomial.legendre.leggauss(4)
+    radius, t = (x + 1) / 2, np.arange(16) * np.pi / 8
+    r, t = np.meshgrid(radius, t, indexing="ij")
+    tau = ellipse_flexure(across * r * np.cos(t), along * r * np.sin(t), across, along, nu)
+    energy = (weight / 2) @ (r * (tau**2).sum(axis=-1)).sum(axis=1) * np.pi / 8 * across * along
+    return float(1 / (np.pi * across * along * energy))
+
+
+def power_shape(nu: float) -> tuple[float, float]:
+    """(A, I) of |y| = (1 - z²)^nu, |z| <= 1: T&G, bending of bars, other cross sections (after Grashof); Beta functions.
+
+    There tau_xz = V (1 - z²)/(2 (1 + nu) I) and tau_xy = -nu V y z/((1 + nu) I) at that nu.
+    """
+    area = 2 * beta(0.5, 1 + nu)
+    return float(area), float(area / (3 + 2 * nu))
+
+
+def hyperbola_shape(nu: float) -> tuple[float, float]:
+    """(A, I) of |y| <= 1, z² <= 1 + nu/(1 + nu) y²: T&G, ibid.; there tau_xz = V (1 + nu/(1 + nu) y² - z²)/(2 I), tau_xy = 0."""
+    x, weight = np.polynomial.legendre.leggauss(40)
+    top = np.sqrt(1 + nu / (1 + nu) * x**2)
+    return float(weight @ (2 * top)), float(weight @ (2 * top**3 / 3))

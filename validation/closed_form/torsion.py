@@ -95,3 +95,18 @@ def eccentric_tube_torsion_constant(inner: float, offset: float) -> float:
 def bredt_constant(side: float, thickness: float) -> float:
     """4 Am²/∮ds/t of a square tube, mid-line side (R. Bredt 1896)."""
     return side**3 * thickness
+
+
+def rectangle_torsion_shorter(width: float, depth: float) -> float:
+    """tau/(G twist) at the middle of the shorter side, b (8/pi²) sum (-1)^k tanh(n pi a/(2b))/n², n = 2k + 1: T&G, ibid."""
+    b, a = sorted((width, depth))
+    k = np.arange(200_000)
+    n = 2 * k + 1
+    terms = np.where(k % 2 == 0, 1.0, -1.0) / n**2 * (np.tanh(np.minimum(n * np.pi * a / (2 * b), 40.0)) - 1)
+    catalan = 0.915965594177219015  # of which the tanh -> 1 part is: sum of (-1)^k/(2k + 1)²
+    return float(b * 8 / np.pi**2 * (catalan + terms.sum()))
+
+
+def hollow_ellipse_torsion_constant(a: float, b: float, ratio: float) -> float:
+    """IT between an ellipse of half axes a, b and one `ratio` times as large, concentric: T&G (a stress line is cut out)."""
+    return float(np.pi * (a * b) ** 3 / (a**2 + b**2) * (1 - ratio**4))
