@@ -46,7 +46,7 @@ def _values(a: float, b: float) -> FloatArray:
     """IT, trefftz, slope."""
     sign = np.where(np.arange(_TERMS) % 2 == 0, 1.0, -1.0)
     n = 2.0 * np.arange(_TERMS) + 1
-    m: FloatArray = n * np.pi / a
+    m: FloatArray = np.asarray(n * np.pi / a)
     factor: FloatArray = 8 * sign / (n * np.pi * (m**2 - 4))
     A: FloatArray = -(1 - b ** (m + 2)) / (1 - b ** (2 * m))
     B: FloatArray = (b**m - b**2) / (1 - b ** (2 * m)) if b else np.zeros(_TERMS)

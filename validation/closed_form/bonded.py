@@ -49,9 +49,7 @@ class Terms:
     def integral(self) -> FloatArray:
         """(n, L) ∫ f ds over each layer."""
         k, h = self.k[:, None], self.thickness
-        return np.asarray(
-            self.particular.mean(axis=-1) * h + self.homogeneous.sum(axis=-1) * np.tanh(k * h / 2) / k
-        )
+        return np.asarray(self.particular.mean(axis=-1) * h + self.homogeneous.sum(axis=-1) * np.tanh(k * h / 2) / k)
 
     def moment(self) -> FloatArray:
         """(n, L) ∫ f (s - s_start) ds over each layer."""
@@ -268,11 +266,6 @@ class ConcentricFlexure:
             radial, hoop = self.polar(r, sleeve)
             total += np.pi / self.G[sleeve] * (high - low) / 2 * float(weight @ (r * (radial**2 + hoop**2)))
         return float(total)
-
-
-def concentric_torsion(radii: FloatArray, G: FloatArray) -> float:
-    """G IT of rings of moduli G between the radii (the first 0): any text."""
-    return float(np.pi / 2 * (np.asarray(G) * np.diff(np.asarray(radii) ** 4)).sum())
 
 
 def core_share(core: float, outer: float, G: tuple[float, float]) -> float:
