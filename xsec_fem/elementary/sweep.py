@@ -164,9 +164,16 @@ def sweeps(solved: SolvedFields, forces: SectionForces, count: int = LEVELS) -> 
 
     A V along an axis makes two families, any other one three; without V only those along the axes.
     """
+    if not (forces.Vy or forces.Vz):
+        return axis_sweeps(solved, forces, count)
+    first = sweep(solved, forces, "perpendicular to V", shear_direction(forces), count)
+    return (first, *axis_sweeps(solved, forces, count))
+
+
+def axis_sweeps(solved: SolvedFields, forces: SectionForces, count: int = LEVELS) -> tuple[Sweep, ...]:
+    """Return the cuts along y and along z, but for those that are perpendicular to V anyway [N, mm, MPa]."""
     families = [("along y", np.array([0.0, 1.0])), ("along z", np.array([1.0, 0.0]))]
     if forces.Vy or forces.Vz:
         direction = shear_direction(forces)
         families = [(name, n) for name, n in families if abs(direction[0] * n[1] - direction[1] * n[0]) > _ALIGNED]
-        families.insert(0, ("perpendicular to V", direction))
     return tuple(sweep(solved, forces, name, normal, count) for name, normal in families)

@@ -12,6 +12,7 @@ from dataclasses import replace
 
 import numpy as np
 
+from xsec_fem.errors import SolveError
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.front import make_mesh, refinable
 from xsec_fem.meshing.sizing import SizeField
@@ -34,7 +35,9 @@ def convergence(result: Result) -> tuple[ConvergenceRow, ...]:
         solution = solve_mesh(section, mesh, Stopwatch())
         certificate = certificate_over_reference(section, solution)
         if certificate is None:
-            raise ValueError(f"no bounds on a mesh of {len(mesh.nodes)} nodes (got {certificate})")
+            raise SolveError(
+                f"no convergence table: no bounds on a mesh of {len(mesh.nodes)} nodes: {solution.no_bounds}"
+            )
         properties = section_properties(section, solution)
         error = max(certificate.energy_error.values())
         order = None

@@ -63,7 +63,8 @@ class CutComparison:
 class CaseResult:
     """One load case: actions as given, forces at the shear centre, largest stresses, joints, probes, corners and cuts.
 
-    `comparison` and `verdict` set the field against V S/(I t); None in a case without shear.
+    `comparison` and `verdict` set the field against V S/(I t); None in a case without shear. `sweep_files` are the names of the
+    files that its sweeps of cuts were written to.
     """
 
     name: str
@@ -77,6 +78,7 @@ class CaseResult:
     cuts: tuple[CutComparison, ...] = ()
     comparison: Comparison | None = None
     verdict: Verdict | None = None
+    sweep_files: tuple[str, ...] = ()
 
     @property
     def T_total(self) -> float:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Mapping, Sequence
 from dataclasses import asdict
 from typing import Any
 
@@ -35,7 +36,7 @@ def _cut_entry(cut: CutComparison) -> dict[str, Any]:
     return {**entry, "elementary": calculation.tau, "ratio": cut.ratio, "hand": symbols}
 
 
-def _verdict_entry(verdict: Verdict) -> dict[str, Any]:
+def _verdict_entry(verdict: Verdict, sweep_files: Sequence[str]) -> dict[str, Any]:
     def entry(finding: Finding) -> dict[str, Any]:
         return {
             "name": finding.name, "side": finding.side, "grade": finding.grade, "worst_ratio": _finite(finding.ratio),
@@ -46,6 +47,7 @@ def _verdict_entry(verdict: Verdict) -> dict[str, Any]:
     return {
         "verdict": verdict.grade, "message": verdict.message,
         "parts": [entry(finding) for finding in verdict.parts], "walls": [entry(finding) for finding in verdict.walls],
+        **({"sweep": list(sweep_files)} if sweep_files else {}),
     }  # fmt: skip
 
 
@@ -56,6 +58,13 @@ def _finite(value: float) -> float | None:
 def largest_entry(case: CaseResult) -> dict[str, Any]:
     """Return the name and the largest values of a case [MPa]."""
     return {"name": case.name, "tau_max": asdict(case.tau_max), "von_mises_max": asdict(case.von_mises_max)}
+
+
+def comparison_part(document: Mapping[str, Any]) -> dict[str, Any]:
+    """Return of the document of results.json only what sets the field against V S/(I t), case by case [N, mm, MPa]."""
+    kept = ("name", "actions", "load_point", "T_total", "elementary", "cuts")
+    head = {key: document[key] for key in ("schema", "title", "input", "versions", "units")}
+    return {**head, "cases": [{key: case[key] for key in kept if key in case} for case in document["cases"]]}
 
 
 def case_entry(case: CaseResult) -> dict[str, Any]:
@@ -80,7 +89,7 @@ def case_entry(case: CaseResult) -> dict[str, Any]:
             for value in probe.values
         ],
         "cuts": [_cut_entry(cut) for cut in case.cuts],
-        **({} if case.verdict is None else {"elementary": _verdict_entry(case.verdict)}),
+        **({} if case.verdict is None else {"elementary": _verdict_entry(case.verdict, case.sweep_files)}),
         "corners": [
             {key: value for key, value in asdict(corner).items() if value is not None} for corner in case.corners
         ],

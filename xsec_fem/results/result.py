@@ -108,6 +108,7 @@ class Result:
             "mesh": {
                 "order": self.mesh.order, "nodes": len(self.mesh.nodes), "elements": len(self.mesh.triangles),
                 "source": self.mesh.source, "adapt_steps": max(len(self.mesh_steps) - 1, 0),
+                "steps": [asdict(step) for step in self.mesh_steps],
             },
             "properties": asdict(self.properties),
             **({} if self.certificate is None else {"certificate": asdict(self.certificate)}),
