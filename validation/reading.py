@@ -33,6 +33,24 @@ def bounds(name: str, scale: float = 1.0) -> ReadInterval:
     return read
 
 
+def from_centroid(name: str, scale: float = 1.0) -> Read:
+    """Return a reader of a shear centre's coordinate ("ysc", "zsc_trefftz", ...) from the centroid, times `scale` [mm]."""
+    axis = name[0]
+    return lambda result: scale * (constant(name)(result) - constant(f"{axis}c")(result))
+
+
+def from_centroid_bounds(name: str, scale: float = 1.0) -> ReadInterval:
+    """Return a reader of the guaranteed interval of that coordinate [mm]."""
+
+    def read(result: Result) -> Interval:
+        low, high = bounds(name)(result)
+        centroid = constant(f"{name[0]}c")(result)
+        ends = sorted((scale * (low - centroid), scale * (high - centroid)))
+        return ends[0], ends[1]
+
+    return read
+
+
 def shear_coefficient(name: str) -> Read:
     """Return a reader of As/A, name "Asy" or "Asz": the energy shear coefficient [-]."""
     return lambda result: float(getattr(result.properties, name)) / result.properties.A
@@ -49,16 +67,25 @@ def shear_coefficient_bounds(name: str) -> ReadInterval:
 
 
 def stress(
-    y: float, z: float, component: str, *, scale: float = 1.0, part: str | None = None, **actions: float
+    y: float,
+    z: float,
+    component: str,
+    *,
+    scale: float = 1.0,
+    part: str | None = None,
+    trefftz: bool = False,
+    **actions: float,
 ) -> Read:
     """Return a reader of tau_xy, tau_xz, tau or sigma_x at a point under given actions, times `scale` [MPa].
 
-    Actions are N, Vy, Vz, T, My, Mz, through the shear centre of zero mean twist. `part` chooses the side of a line between
-    two materials. Raises ValueError when the point is outside, or lies in several parts and none is named.
+    Actions are N, Vy, Vz, T, My, Mz, through the shear centre of zero mean twist, or through the Trefftz one. `part` chooses
+    the side of a line between two materials. Raises ValueError when the point is outside, or lies in several parts and none
+    is named.
     """
 
     def read(result: Result) -> float:
-        load = replace(Actions(name="reading", load_point="shear centre"), **actions)  # type: ignore[arg-type]
+        centre = (result.properties.ysc_trefftz, result.properties.zsc_trefftz) if trefftz else "shear centre"
+        load = replace(Actions(name="reading", load_point=centre), **actions)  # type: ignore[arg-type]
         values = [value for value in result.at(y, z, load) if part is None or value.part == part]
         if len(values) != 1:
             raise ValueError(f"{len(values)} values at ({y}, {z}), part {part!r}: one is wanted")

@@ -56,7 +56,8 @@ def point_stress(scale: float = 1.0) -> Tolerance:
     """A stress at a point, in units where the mean stress V/A, or G twist times the wall, is `scale`."""
     return Tolerance(
         2 * ACCURACY * scale,
-        f"no bound holds at a point; a field of degree 4 with an energy error below {ACCURACY:g} errs there by no more than twice that",
+        f"no bound holds at a point; a field of degree 4 with an energy error below {ACCURACY:g} errs there by no more than twice "
+        "that",
         relative=False,
     )
 

@@ -5,12 +5,13 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 
 from ..case import Case
-from . import rectangle_flexure, round_flexure, torsion
+from . import polygons, rectangle_flexure, round_flexure, torsion
 
 FAMILIES: Sequence[Callable[[], list[Case]]] = (
     rectangle_flexure.cases,
     round_flexure.cases,
     torsion.cases,
+    polygons.cases,
 )
 
 
