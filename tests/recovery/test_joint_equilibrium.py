@@ -10,10 +10,10 @@ from tests import structured
 from tests.chain import Solved, layered
 from tests.theory.strategies import RandomSection, random_sections
 from xsec_fem.fem.mapping import batches
+from xsec_fem.model.connections import Connections
 from xsec_fem.model.section import Joint
 from xsec_fem.recovery.corners import find_corners
 from xsec_fem.recovery.joint_results import joint_result
-from xsec_fem.recovery.joint_sides import Connections
 from xsec_fem.recovery.joints import JointFlows, joint_flows
 from xsec_fem.recovery.stress_field import SectionForces
 from xsec_fem.theory.moduli import Moduli

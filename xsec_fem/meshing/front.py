@@ -26,7 +26,8 @@ def make_mesh(section: Section, split_points: Sequence[Point] = (), sizes: SizeF
     """Return the mesh of the section, and write it to `section.solve.mesh_file` when that is set.
 
     The order is the one in [solve], else that of the mesh file when above 1, else 4. `split_points` become nodes of a
-    drawn section; `sizes` are wished element sizes [mm], those of a first mesh when None. Raises InputError, MeshingError, MissingLibraryError.
+    drawn section; `sizes` are wished element sizes [mm], those of a first mesh when None. Faying faces of joints that are
+    slits have come apart. Raises InputError, MeshingError, MissingLibraryError.
     """
     mesh = open_joints(section, _mesh_of(section, [*split_points, *joint_vertices(section)], sizes))
     if section.solve.mesh_file is not None:

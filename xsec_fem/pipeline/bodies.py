@@ -7,9 +7,9 @@ import numpy as np
 from xsec_fem.errors import Fault, InputError
 from xsec_fem.fem.edges import Edges, connected_bodies
 from xsec_fem.fem.mesh import Mesh
+from xsec_fem.model.connections import Connections
 from xsec_fem.model.section import Joint, Section
 from xsec_fem.recovery.contacts import find_contacts, find_slits
-from xsec_fem.recovery.joint_sides import Connections
 from xsec_fem.results import Contact
 
 

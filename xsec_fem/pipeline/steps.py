@@ -15,6 +15,7 @@ from importlib.metadata import PackageNotFoundError, version
 
 from xsec_fem.fem.mesh import Mesh
 from xsec_fem.meshing.front import make_mesh
+from xsec_fem.model.connections import Connections
 from xsec_fem.model.root_radius import with_root_radius
 from xsec_fem.model.section import Section
 from xsec_fem.pipeline.adaptive import Progress, mesh_step, solve_adaptively
@@ -28,7 +29,6 @@ from xsec_fem.pipeline.stopwatch import Stopwatch
 from xsec_fem.recovery.corner_intensity import corner_intensities
 from xsec_fem.recovery.cuts import place_cuts
 from xsec_fem.recovery.element_stress import equilibrated_stress
-from xsec_fem.recovery.joint_sides import Connections
 from xsec_fem.recovery.joints import joint_flows
 from xsec_fem.recovery.largest import corner_rings
 from xsec_fem.recovery.solved_fields import SolvedFields

@@ -6,44 +6,19 @@ V S/I of whatever is cut off gives only the sum over all that the cut crosses.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
-from dataclasses import dataclass, field
+from collections.abc import Iterable
+from dataclasses import dataclass
 
 import numpy as np
 import numpy.typing as npt
 
 from xsec_fem.fem.edges import Edges, connected_bodies, edges_round
 from xsec_fem.fem.mesh import Mesh
-from xsec_fem.model.section import Joint, Section
+from xsec_fem.model.connections import Connections
+from xsec_fem.model.section import Joint
 
 IntArray = npt.NDArray[np.int64]
 BoolArray = npt.NDArray[np.bool_]
-
-
-@dataclass(frozen=True)
-class Connections:
-    """What holds the parts together: the joints, and the weld beads by the joint they belong to."""
-
-    joints: tuple[Joint, ...]
-    bead_of: Mapping[str, str] = field(default_factory=dict)
-
-    @classmethod
-    def of(cls, section: Section) -> Connections:
-        """Return those of a section."""
-        return cls(section.joints, {part.name: part.bead_of for part in section.parts if part.bead_of is not None})
-
-    def beads(self, joint: Joint) -> set[str]:
-        """Return the names of a joint's beads."""
-        return {bead for bead, name in self.bead_of.items() if name == joint.name}
-
-    def joint_between(self, pair: Iterable[str]) -> str | None:
-        """Return the joint that claims a pair of parts, or whose bead one of them is; None when they are one solid."""
-        names = set(pair)
-        for joint in self.joints:
-            one, other = ({*side, *self.beads(joint)} for side in (joint.first, joint.second))
-            if names & one and names & other and names <= one | other:
-                return joint.name
-        return None
 
 
 @dataclass(frozen=True)

@@ -19,10 +19,11 @@ from xsec_fem.fem.edge_integrals import edge_lengths, edge_mass_matrix, edge_nod
 from xsec_fem.fem.edges import Edges
 from xsec_fem.fem.mapping import batches
 from xsec_fem.fem.slits import facing_edges
+from xsec_fem.model.connections import Connections
 from xsec_fem.model.section import Joint
 from xsec_fem.recovery.corners import Corner
 from xsec_fem.recovery.joint_lines import BondLine, bond_lines
-from xsec_fem.recovery.joint_sides import Connections, JointSide, joint_sides
+from xsec_fem.recovery.joint_sides import JointSide, joint_sides
 from xsec_fem.recovery.stress_field import UnitFields
 from xsec_fem.theory.stiffness import ShearStiffness
 from xsec_fem.theory.warping import POISSON, SHEAR, TORSION, Warping

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from xsec_fem.fem.mesh import Mesh
+from xsec_fem.model.connections import Connections
 from xsec_fem.model.section import Section
 from xsec_fem.report.blocks import Block, Heading, Lines, Table
 from xsec_fem.report.numbers import number
@@ -59,18 +60,9 @@ def _parts(section: Section, outlines: Sequence[PartOutline]) -> Table:
 def _touching(section: Section, outlines: list[PartOutline]) -> list[Block]:
     if len(outlines) < 2:
         return []
-    rows = []
+    rows, connections = [], Connections.of(section)
     for line in shared_lines(outlines):
-        first, second = line.parts
-        joint = next(
-            (
-                joint.name
-                for joint in section.joints
-                if (first in joint.first and second in joint.second)
-                or (second in joint.first and first in joint.second)
-            ),
-            "none: taken as one solid",
-        )
-        rows.append((f"{first} | {second}", number(line.length, 4), joint))
+        joint = connections.joint_between(line.parts) or "none: taken as one solid"
+        rows.append((" | ".join(line.parts), number(line.length, 4), joint))
     header = ("parts", f"along, about [{section.units.length}]", "joint")
     return [Heading("Parts that touch"), Table(header, tuple(rows), "lrl")]
