@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import os
 import subprocess
 import sys
@@ -84,3 +85,9 @@ def test_faults_need_no_traceback():
     assert done.returncode == 2
     assert done.stderr.startswith("no such file.toml does not exist")
     assert done.stderr.count("\n") == 1
+
+
+def test_the_process_is_left_as_it_was(capsys):
+    before = gc.get_threshold()
+    main(["starter"])
+    assert gc.get_threshold() == before
