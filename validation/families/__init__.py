@@ -5,12 +5,15 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 
 from ..case import Case
-from . import polygons, rectangle_flexure, round_flexure, torsion
+from . import exact_shapes, polygons, rectangle_flexure, round_flexure, sectors, thin_warping, torsion
 
 FAMILIES: Sequence[Callable[[], list[Case]]] = (
     rectangle_flexure.cases,
     round_flexure.cases,
+    exact_shapes.cases,
     torsion.cases,
+    sectors.cases,
+    thin_warping.cases,
     polygons.cases,
 )
 

@@ -25,7 +25,7 @@ def _channel(t: float) -> list[list[float]]:
 
 
 _ROOT = 3**0.5
-OUTLINES = {
+OUTLINES: dict[str, list[list[float]]] = {
     "right triangle": [[0, 0], [1, 0], [0, 1]],
     "equilateral triangle": [[-_ROOT, -1], [_ROOT, -1], [0, 2]],
     "hexagon": [[1, 0], [0.5, _ROOT / 2], [-0.5, _ROOT / 2], [-1, 0], [-0.5, -_ROOT / 2], [0.5, -_ROOT / 2]],
@@ -138,22 +138,21 @@ def _coupling_bounds(result: Result) -> Interval:
 
 def _point(number: int, ref: PointStress) -> Case:
     place = f"({ref.y:.4g}, {ref.z:.4g})"
+    read: Read
     if ref.load == "T":
-        read, quantity, scale = (
-            twist_stress(ref.y, ref.z, ref.component),
-            f"{ref.component}/(G twist) at {place}",
-            abs(ref.value),
-        )
+        read, quantity, unit = twist_stress(ref.y, ref.z, ref.component), f"{ref.component}/(G twist) at {place}", "mm"
     else:
-        load = {ref.load: 1.0}
-
-        def read(result: Result) -> float:
-            return result.properties.A * stress(ref.y, ref.z, ref.component, trefftz=True, **load)(result)
-
-        quantity, scale = f"{ref.component} A/{ref.load} at {place}", 1.0
+        read, quantity, unit = _mean_stresses(ref), f"{ref.component} A/{ref.load} at {place}", "-"
     return Case(
         f"polygon.{ref.polygon}.nu{ref.nu:g}.stress {number}", STRESS_GROUP,
         TITLES[ref.polygon] + (f", nu {ref.nu:g}" if ref.nu else ""), quantity, (text(ref.polygon, ref.nu),), read, ref.value,
-        GOPAL_TREFETHEN, "computed", point_stress(scale), "mm" if ref.load == "T" else "-",
+        GOPAL_TREFETHEN, "computed", point_stress(abs(ref.value) if ref.load == "T" else 1.0), unit,
         reference_error=ALL_POLYGONS[ref.polygon].digits, quick=ref.polygon in QUICK,
     )  # fmt: skip
+
+
+def _mean_stresses(ref: PointStress) -> Read:
+    """The stress over V/A, V = 1 through the Trefftz centre."""
+    Vy, Vz = float(ref.load == "Vy"), float(ref.load == "Vz")
+    read = stress(ref.y, ref.z, ref.component, trefftz=True, Vy=Vy, Vz=Vz)
+    return lambda result: result.properties.A * read(result)
