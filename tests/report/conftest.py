@@ -10,7 +10,7 @@ from tests.report.sections import ALL
 from xsec_fem.model.reader import parse_section
 from xsec_fem.pipeline import solve
 from xsec_fem.report.drawing_mesh import drawing_mesh
-from xsec_fem.report.stress_picture import Canvas
+from xsec_fem.report.section_canvas import Canvas
 from xsec_fem.results import Result
 
 

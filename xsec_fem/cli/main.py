@@ -24,6 +24,7 @@ _GC_EVERY = 50_000
 
 COMMANDS = {
     "solve": "mesh and solve section files: properties, stresses, joints, pictures",
+    "compare": "where the hand formula V S/(I t) is wrong, and why: verdict, parts, walls, cuts, pictures",
     "sketch": "check a section file and draw it, without solving",
     "starter": "write a commented section file to start from",
     "validate": "compare the program with exact solutions and published values, and print the table",

@@ -149,7 +149,7 @@ def make_sheet(plan: Plan, length_unit: str) -> Sheet:
     _set_view(axes, plan.limits, length_unit)
     detail = figure.add_axes(_share(plan.detail, plan.size)) if plan.detail else None
     bar = figure.add_axes(_share(plan.bar, plan.size)) if plan.bar else None
-    _write(figure, plan)
+    write_texts(figure, plan.size, (plan.title, plan.subtitles, plan.notes))
     return Sheet(figure, axes, detail, bar, plan)
 
 
@@ -193,14 +193,18 @@ def _tick(value: float, decimals: int) -> str:
     return "0" if text == "-0" else text
 
 
-def _write(figure: Figure, plan: Plan) -> None:
-    left, height = _EDGE / plan.size[0], plan.size[1]
+def write_texts(
+    figure: Figure, size: tuple[float, float], texts: tuple[Sequence[str], Sequence[str], Sequence[str]]
+) -> None:
+    """Write title and subtitles from the top of a page of that size [in] down, and notes above its lower edge."""
+    left, height = _EDGE / size[0], size[1]
+    title, subtitles, notes = texts
     top = height - 0.1
-    for lines, size, weight in ((plan.title, TITLE, "bold"), (plan.subtitles, SUBTITLE, "normal")):
+    for lines, letters, weight in ((title, TITLE, "bold"), (subtitles, SUBTITLE, "normal")):
         for line in lines:
-            figure.text(left, top / height, line, size=size, weight=weight, va="top", color=INK, parse_math=False)
-            top -= line_height(size)
-    base = _EDGE + len(plan.notes) * line_height(NOTE)
-    for line in plan.notes:
+            figure.text(left, top / height, line, size=letters, weight=weight, va="top", color=INK, parse_math=False)
+            top -= line_height(letters)
+    base = _EDGE + len(notes) * line_height(NOTE)
+    for line in notes:
         figure.text(left, base / height, line, size=NOTE, va="top", color=INK, parse_math=False)
         base -= line_height(NOTE)

@@ -12,21 +12,18 @@ from xsec_fem.report.direction_arrows import direction_arrows
 from xsec_fem.report.drawing_mesh import DrawingMesh
 from xsec_fem.report.marks import Mark, draw_marks
 from xsec_fem.report.numbers import number, point
-from xsec_fem.report.sheet import INK, NOTE, SUBTITLE, Box, Sheet, make_plan, make_sheet, paper_scale, show_window
-from xsec_fem.report.wording import actions_text, load_point_text, section_size
+from xsec_fem.report.section_canvas import SMALL_RING, Canvas, actions_line, detail_place, draw_rings, open_detail
+from xsec_fem.report.sheet import INK, NOTE, SUBTITLE, Box, Sheet, make_plan, make_sheet, paper_scale
+from xsec_fem.report.wording import section_size
 from xsec_fem.results import CaseResult, Result
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
     from matplotlib.figure import Figure
-    from matplotlib.tri import Triangulation
 
 RASTERISE_ABOVE = 5000  # triangles in a vector file; more are stored as an image inside it
 
-_THIN = 0.12  # walls thinner than this on paper get a detail [in]
-_DETAIL_WALLS = 5.0  # height of the detail in wall thicknesses
 _ARROW_SPACING = 0.26  # [in]
-_SMALL_RING = 0.045  # smallest ring that can be seen [in]
 _WORTH_MARKING = 0.1  # the extreme of the other sign is marked when above this share of the larger
 
 
@@ -47,21 +44,6 @@ QUANTITIES = (
 )
 
 
-@dataclass(frozen=True)
-class Canvas:
-    """The mesh as drawn and its triangulation, shared by all pictures of a result."""
-
-    mesh: DrawingMesh
-    triangulation: Triangulation
-
-    @classmethod
-    def of(cls, mesh: DrawingMesh) -> Canvas:
-        """Make the triangulation (K, 3) of a mesh to draw."""
-        from matplotlib.tri import Triangulation
-
-        return cls(mesh, Triangulation(mesh.places[:, 0], mesh.places[:, 1], mesh.triangles))
-
-
 def stress_figure(result: Result, case: CaseResult, quantity: Quantity, canvas: Canvas) -> Figure:
     """Return the picture of one quantity [MPa] of one case, 150 dpi; lengths in the file's unit."""
     units, mesh = result.section.units, canvas.mesh
@@ -70,11 +52,11 @@ def stress_figure(result: Result, case: CaseResult, quantity: Quantity, canvas: 
     scale = colour_scale(values, _shown(marks, quantity), quantity.signed, case.tau_max.value)
     if scale.flat:
         marks = []
-    focus = _detail_place(marks[0], result, mesh) if marks else None
+    focus = detail_place(marks[0], result, mesh) if marks else None
     headings = [
         result.section.title or "Section",
         f"{case.name}: {quantity.symbol}, {quantity.words} [{units.stress}]",
-        _actions_line(result, case),
+        actions_line(result, case),
     ]
     notes = [*_mark_notes(marks, quantity, result), *_notes(result, canvas, scale, quantity)]
     plan = make_plan(mesh.box, headings, notes, bar=True, detail=focus is not None)
@@ -82,21 +64,12 @@ def stress_figure(result: Result, case: CaseResult, quantity: Quantity, canvas: 
     fill = _Fill(canvas, values, scale, case, quantity.key == "tau")
     views = [(sheet.axes, plan.limits, plan.scale)]
     if focus is not None and sheet.detail is not None:
-        views.append(_open_detail(sheet, focus, units.length))
+        views.append(open_detail(sheet, focus, units.length))
     filled = [fill.draw(axes, box, inches, result) for axes, box, inches in views]
     for axes, box, inches in views:
         draw_marks(axes, [mark for mark in marks if mark.inside(box)], box, inches)
     _colour_bar(sheet, filled[0], scale, f"{quantity.symbol} [{units.stress}]")
     return sheet.figure
-
-
-def _actions_line(result: Result, case: CaseResult) -> str:
-    units = result.section.units
-    place = load_point_text(case.actions, units)
-    size = abs(case.forces.Vy) + abs(case.forces.Vz)
-    torque = number(case.T_total, scale=size * section_size(result))
-    total = f"; total torque about the shear centre {torque} {units.moment}" if torque != "0" else ""
-    return actions_text(case.actions, units) + (f" {place}" if place else "") + total
 
 
 def _extremes(case: CaseResult, quantity: Quantity, mesh: DrawingMesh) -> list[Mark]:
@@ -140,7 +113,7 @@ def _notes(result: Result, canvas: Canvas, scale: ColourScale, quantity: Quantit
         within = (
             f"within {reach} {result.section.units.length}" if np.ptp(distances) < 1e-9 * max(distances) else "close"
         )
-        small = max(distances) * paper_scale(canvas.mesh.box) < _SMALL_RING
+        small = max(distances) * paper_scale(canvas.mesh.box) < SMALL_RING
         note = f"Rings: corners where the stress has no limit; stress not read within the ring ({within} of the corner"
         note += "; the rings are drawn larger)." if small else ")."
         beyond = (
@@ -150,31 +123,6 @@ def _notes(result: Result, canvas: Canvas, scale: ColourScale, quantity: Quantit
     tail = " Arrows show the direction of τ, not its size." if quantity.key == "tau" else ""
     notes.append("y to the right, z up; stresses on the face that looks at you (+x)." + tail)
     return notes
-
-
-def _detail_place(mark: Mark, result: Result, mesh: DrawingMesh) -> tuple[tuple[float, float], float] | None:
-    """Middle and height [mm] of the detail: about the largest value, where the walls are too thin to be seen well."""
-    wall = float(mesh.walls[result.mesh.part_names.index(mark.part)])
-    return ((mark.y, mark.z), _DETAIL_WALLS * wall) if wall * paper_scale(mesh.box) < _THIN else None
-
-
-def _open_detail(sheet: Sheet, focus: tuple[tuple[float, float], float], unit: str) -> tuple[Axes, Box, float]:
-    """Aim the detail, frame its window in the drawing, and return its axes, box and scale [in/mm]."""
-    from matplotlib.patches import Rectangle
-
-    detail = sheet.detail
-    if detail is None or sheet.plan.detail is None:
-        raise ValueError(f"the page has no detail: {sheet.plan}")
-    box = show_window(detail, focus[0], focus[1], unit)
-    scale = sheet.plan.detail[3] / focus[1]
-    detail.set_title(
-        f"Detail, {number(scale / sheet.plan.scale, 2)} times larger", size=SUBTITLE, color=INK, loc="left"
-    )
-    least = 0.12 / sheet.plan.scale  # a frame that can be seen
-    size = (max(box[2] - box[0], least), max(box[3] - box[1], least))
-    corner = (focus[0][0] - size[0] / 2, focus[0][1] - size[1] / 2)
-    sheet.axes.add_patch(Rectangle(corner, *size, fill=False, edgecolor=INK, linewidth=0.8, linestyle="--", zorder=5))
-    return detail, box, scale
 
 
 @dataclass(frozen=True)
@@ -204,19 +152,10 @@ class _Fill:
         filled.set_rasterized(len(self.canvas.mesh.triangles) > RASTERISE_ABOVE)
         width = float(np.clip(0.12 * wall, 0.15, 0.8))
         axes.add_collection(LineCollection(self.canvas.mesh.loops, colors=INK, linewidths=width))
-        self._rings(axes, box, inches, result)
+        draw_rings(axes, box, inches, result)
         if self.arrows:
             self._directions(axes, box, inches)
         return filled
-
-    def _rings(self, axes: Axes, box: Box, inches: float, result: Result) -> None:
-        from matplotlib.patches import Circle
-
-        for corner in result.corners:
-            radius = max(corner.distance, _SMALL_RING / inches)
-            if box[0] < corner.y < box[2] and box[1] < corner.z < box[3]:
-                ring = Circle((corner.y, corner.z), radius, fill=False, edgecolor="#c51b7d", linewidth=1.0, zorder=6)
-                axes.add_patch(ring)
 
     def _directions(self, axes: Axes, box: Box, inches: float) -> None:
         places, along = direction_arrows(self.case.stress, box, _ARROW_SPACING / inches, self.case.tau_max.value)

@@ -53,6 +53,11 @@ def unique_slugs(names: list[str]) -> list[str]:
     return found
 
 
+def case_prefixes(result: Result) -> list[str]:
+    """Return what the files of each case begin with: its name as a slug, "" when there is one case only."""
+    return unique_slugs([case.name for case in result.cases]) if len(result.cases) > 1 else [""] * len(result.cases)
+
+
 def counted(count: int, noun: str) -> str:
     """Return "1 node", "3 nodes"."""
     return f"{count} {noun}" + ("" if count == 1 else "s")
