@@ -64,5 +64,7 @@ class BuiltUp:
     def flow(self, cut_off: Collection[int], Vy: float = 0.0, Vz: float = 0.0) -> float:
         """V S/I of the pieces cut off, force per length of beam."""
         gradient = np.linalg.solve(self.EI, [Vy, Vz])
-        moved = [(p.E * p.area, p.y - self.centroid[0], p.z - self.centroid[1]) for p in (self.pieces[k] for k in cut_off)]
+        moved = [
+            (p.E * p.area, p.y - self.centroid[0], p.z - self.centroid[1]) for p in (self.pieces[k] for k in cut_off)
+        ]
         return float(sum(EA * (gradient @ [y, z]) for EA, y, z in moved))

@@ -5,7 +5,24 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 
 from ..case import Case
-from . import exact_shapes, polygons, rectangle_flexure, round_flexure, sectors, thin_warping, torsion
+from . import (
+    bonded_materials,
+    built_up,
+    closed_cells,
+    exact_shapes,
+    fillet_torsion,
+    kernel,
+    polygons,
+    rectangle_flexure,
+    rolled_sections,
+    round_flexure,
+    sandwich,
+    sectors,
+    singular_corners,
+    thin_wall_limits,
+    thin_warping,
+    torsion,
+)
 
 FAMILIES: Sequence[Callable[[], list[Case]]] = (
     rectangle_flexure.cases,
@@ -15,6 +32,15 @@ FAMILIES: Sequence[Callable[[], list[Case]]] = (
     sectors.cases,
     thin_warping.cases,
     polygons.cases,
+    fillet_torsion.cases,
+    bonded_materials.cases,
+    sandwich.cases,
+    thin_wall_limits.cases,
+    closed_cells.cases,
+    built_up.cases,
+    rolled_sections.cases,
+    singular_corners.cases,
+    kernel.cases,
 )
 
 

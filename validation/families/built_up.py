@@ -22,11 +22,16 @@ from ..section_text import Table, section_text
 from ..sources import TIMOSHENKO_GOODIER, at
 
 GROUP = "built-up beams"
-JOURAWSKI = Source("D. I. Jourawski", "V S/(I t); any text on the strength of materials", "1856", "equilibrium of what is cut off")
+JOURAWSKI = Source(
+    "D. I. Jourawski", "V S/(I t); any text on the strength of materials", "1856", "equilibrium of what is cut off"
+)
 _SERIES = Source("derived here", "series of a ring sector in r^m and r^-m", "2026", "slit tube")
-_FLOW = Tolerance(1e-9, "the sum of the consistent nodal forces of a joint is V S/I on any mesh; round-off of a few thousand terms")
+_FLOW = Tolerance(
+    1e-9, "the sum of the consistent nodal forces of a joint is V S/I on any mesh; round-off of a few thousand terms"
+)
 _SPLIT = Tolerance(
-    2e-3, "the share of two equal beads or rows is half by symmetry; the mesh is not symmetric, and good to 1e-2 in energy at most"
+    2e-3,
+    "the share of two equal beads or rows is half by symmetry; the mesh is not symmetric, and good to 1e-2 in energy at most",
 )
 
 
@@ -52,9 +57,7 @@ class _Beam:
 
     def flow(self, joint: int, cut_off: Sequence[int]) -> Case:
         """The flow of a joint."""
-        return self.case(
-            f"flow of joint {joint + 1}", joint_flow(joint), self.parts.flow(cut_off, self.Vy, self.Vz)
-        )
+        return self.case(f"flow of joint {joint + 1}", joint_flow(joint), self.parts.flow(cut_off, self.Vy, self.Vz))
 
 
 def joint_flow(joint: int) -> Callable[[Result], float]:
@@ -63,7 +66,14 @@ def joint_flow(joint: int) -> Callable[[Result], float]:
 
 
 def _plank(name: str, piece: Piece, width: float, height: float, material: str = "m") -> Table:
-    return {"name": name, "material": material, "shape": "rectangle", "width": width, "height": height, "at": [piece.y, piece.z]}
+    return {
+        "name": name,
+        "material": material,
+        "shape": "rectangle",
+        "width": width,
+        "height": height,
+        "at": [piece.y, piece.z],
+    }
 
 
 def _joint(number: int, first: str, second: str, kind: str = "glue", **more: object) -> Table:
@@ -79,7 +89,8 @@ def _beam(
     moduli = sorted({piece.E for piece in pieces})
     materials = {f"E{E:g}": {"E": E, "nu": nu} for E in moduli}
     parts = [
-        _plank(str(k), piece, size[0], size[1], f"E{piece.E:g}") for k, (piece, size) in enumerate(zip(pieces, sizes, strict=True), 1)
+        _plank(str(k), piece, size[0], size[1], f"E{piece.E:g}")
+        for k, (piece, size) in enumerate(zip(pieces, sizes, strict=True), 1)
     ]
     action = {"name": "V", "Vy": Vy, "Vz": Vz, "load_point": "shear centre"}
     text = section_text(title, parts, materials=materials, joints=joints, actions=[action])
@@ -106,7 +117,10 @@ def _planks() -> list[Case]:
         [(150, 40, 0, 130, 14), (40, 220, 0, 0, E), (150, 40, 0, -130, E)], [_joint(1, "1", "2"), _joint(2, "3", "2")], Vz=10000.0,
     )  # fmt: skip
     mean = three.case(
-        "mean glue stress", lambda r: -(r.cases[0].joints[0].mean or 0.0), three.parts.flow([0], Vz=12000.0) / 200, unit="MPa"
+        "mean glue stress",
+        lambda r: -(r.cases[0].joints[0].mean or 0.0),
+        three.parts.flow([0], Vz=12000.0) / 200,
+        unit="MPa",
     )
     return [*(beam.flow(joint, [2 * joint]) for beam in (three, i_beam, layered) for joint in (0, 1)), mean]
 
@@ -162,12 +176,28 @@ def _welds() -> list[Case]:
     plates = [rectangle(300, 20, 0, 795), rectangle(10, 760, 0, 405), rectangle(400, 25, 0, 12.5)]
     beads = [bead(leg, 5.0 * side, z, side > 0, z < 400) for z in (785.0, 25.0) for side in (-1, 1)]
     parts = [_plank("top", plates[0], 300, 20), _plank("web", plates[1], 10, 760), _plank("bottom", plates[2], 400, 25)]
-    joints = [_joint(1, "top", "web", "fillet weld", throat=throat), _joint(2, "bottom", "web", "fillet weld", throat=throat)]
+    joints = [
+        _joint(1, "top", "web", "fillet weld", throat=throat),
+        _joint(2, "bottom", "web", "fillet weld", throat=throat),
+    ]
     text = section_text("girder, fillet welds", parts, E=210e3, nu=0.3, joints=joints,
                         actions=[{"name": "V", "Vz": V, "load_point": "shear centre"}])  # fmt: skip
-    girder = _Beam("weld", "the girder with two fillet welds a = 5 at each flange, Vz = 900 kN", text, BuiltUp([*plates, *beads]), 0, V)
+    girder = _Beam(
+        "weld",
+        "the girder with two fillet welds a = 5 at each flange, Vz = 900 kN",
+        text,
+        BuiltUp([*plates, *beads]),
+        0,
+        V,
+    )
     found = [
-        girder.case("EIyy", constant("EIyy"), 210e3 * girder.parts.EI[1, 1], Tolerance(1e-12, "straight sides; round-off"), "N mm²")
+        girder.case(
+            "EIyy",
+            constant("EIyy"),
+            210e3 * girder.parts.EI[1, 1],
+            Tolerance(1e-12, "straight sides; round-off"),
+            "N mm²",
+        )
     ]
     for joint, piece in ((0, 0), (1, 2)):
         flow = girder.parts.flow([piece], Vz=V)
@@ -206,7 +236,14 @@ def _contact() -> list[Case]:
     exact = RING_SECTORS["slit tube, t/R = 0.05"]
     thickness = 1 - exact.inner
     parts = [
-        {"name": name, "shape": "sector", "radius": 1.0, "thickness": thickness, "from_deg": start, "to_deg": start + 120.0}
+        {
+            "name": name,
+            "shape": "sector",
+            "radius": 1.0,
+            "thickness": thickness,
+            "from_deg": start,
+            "to_deg": start + 120.0,
+        }
         for name, start in (("first", 0.0), ("second", 120.0), ("third", 240.0))
     ]
     joints = [_joint(1, "first", "third", "contact")]

@@ -12,7 +12,12 @@ from .bonded_materials import shear_flexibility
 
 GROUP = "sandwich"
 _LAYERS = Source("any text on the strength of materials", "transformed section, E Q/(EI b)", "", "exact at nu = 0")
-_ALLEN = Source("H. G. Allen", "Analysis and Design of Structural Sandwich Panels", "1969", "core shear V/(b d), shear stiffness b d² G/c")
+_ALLEN = Source(
+    "H. G. Allen",
+    "Analysis and Design of Structural Sandwich Panels",
+    "1969",
+    "core shear V/(b d), shear stiffness b d² G/c",
+)
 
 
 def cases() -> list[Case]:
@@ -28,19 +33,37 @@ def _panel(name: str, face: float, core: float, E_face: float, E_core: float) ->
     exact = LayeredFlexure(lines, np.array([E_face, E_core, E_face]), b, 0.0)
     materials = {"face": {"E": E_face, "nu": 0.0}, "core": {"E": E_core, "nu": 0.0}}
     parts = [
-        {"name": "below", "material": "face", "shape": "rectangle", "width": b, "height": face, "at": [0.0, -half - face / 2]},
+        {
+            "name": "below",
+            "material": "face",
+            "shape": "rectangle",
+            "width": b,
+            "height": face,
+            "at": [0.0, -half - face / 2],
+        },
         {"name": "core", "material": "core", "shape": "rectangle", "width": b, "height": core},
-        {"name": "above", "material": "face", "shape": "rectangle", "width": b, "height": face, "at": [0.0, half + face / 2]},
+        {
+            "name": "above",
+            "material": "face",
+            "shape": "rectangle",
+            "width": b,
+            "height": face,
+            "at": [0.0, half + face / 2],
+        },
     ]
     title = f"sandwich b = {b:g}, faces {face:g} (E = {E_face:g}), core {core:g} (E = {E_core:g})"
     text = section_text(title, parts, materials=materials)
-    polynomial = Tolerance(1e-9, "a polynomial of degree 2 in z, within the elements' degree; round-off with moduli 1000 apart")
+    polynomial = Tolerance(
+        1e-9, "a polynomial of degree 2 in z, within the elements' degree; round-off with moduli 1000 apart"
+    )
     d = core + face
     # what the handbook leaves out: the core's own bending, E_c c²/(4 E_f t d) of the core's stress, and that of the faces, t²/(3 d²)
     core_part, face_part = E_core * core**2 / (4 * E_face * face * d), face**2 / (3 * d**2)
     left_out = core_part + face_part
 
-    def case(key: str, quantity: str, read: object, reference: float, source: Source, tolerance: Tolerance, unit: str) -> Case:
+    def case(
+        key: str, quantity: str, read: object, reference: float, source: Source, tolerance: Tolerance, unit: str
+    ) -> Case:
         return Case(f"sandwich.{name}.{key}", GROUP, title, quantity, (text,), read, reference, source,  # type: ignore[arg-type]
                     "computed", tolerance, unit, quick=name == "thin")  # fmt: skip
 

@@ -12,8 +12,15 @@ from ..closed_form.wedges import half_and_quarter, two_sectors, wedge
 from ..section_text import Table, section_text
 
 GROUP = "singular corners"
-_WILLIAMS = Source("M. L. Williams", "Stress singularities in angular corners, J. Appl. Mech. 19", "1952", "antiplane form derived here")
-_EXACT = Tolerance(1e-9, "the angle is that of the mesh's straight sides; round-off of their directions", relative=False)
+_WILLIAMS = Source(
+    "M. L. Williams",
+    "Stress singularities in angular corners, J. Appl. Mech. 19",
+    "1952",
+    "antiplane form derived here",
+)
+_EXACT = Tolerance(
+    1e-9, "the angle is that of the mesh's straight sides; round-off of their directions", relative=False
+)
 
 
 def cases() -> list[Case]:
@@ -53,7 +60,9 @@ def _notched(angle: float) -> Table:
 
 def _notch(angle: float) -> Case:
     title = f"notch, {angle:g}° of material"
-    return _case(f"notch{angle:g}", title, section_text(title, [_notched(angle)]), (0.0, 0.0), wedge(angle), quick=angle == 225.0)
+    return _case(
+        f"notch{angle:g}", title, section_text(title, [_notched(angle)]), (0.0, 0.0), wedge(angle), quick=angle == 225.0
+    )
 
 
 def _block(ratio: float) -> Case:
@@ -72,8 +81,18 @@ def _scarf(angle: float, ratio: float) -> Case:
     """Two materials that meet in a line at an angle to a straight edge: singular on the side where the stiffer one is obtuse."""
     run = 1.0 / radians_tan(angle)
     parts = [
-        {"name": "left", "material": "left", "shape": "polygon", "points": [[-3.0, 0.0], [0.0, 0.0], [run, 1.0], [-3.0, 1.0]]},
-        {"name": "right", "material": "right", "shape": "polygon", "points": [[0.0, 0.0], [3.0, 0.0], [3.0, 1.0], [run, 1.0]]},
+        {
+            "name": "left",
+            "material": "left",
+            "shape": "polygon",
+            "points": [[-3.0, 0.0], [0.0, 0.0], [run, 1.0], [-3.0, 1.0]],
+        },
+        {
+            "name": "right",
+            "material": "right",
+            "shape": "polygon",
+            "points": [[0.0, 0.0], [3.0, 0.0], [3.0, 1.0], [run, 1.0]],
+        },
     ]
     materials = {"left": {"E": 2.0, "nu": 0.3}, "right": {"E": 2.0 * ratio, "nu": 0.3}}
     title = f"scarf at {angle:g}° to the edge, right {ratio:g} times as stiff"
