@@ -9,6 +9,7 @@ from . import (
     bonded_materials,
     built_up,
     closed_cells,
+    conventions,
     exact_shapes,
     fillet_torsion,
     kernel,
@@ -40,6 +41,7 @@ FAMILIES: Sequence[Callable[[], list[Case]]] = (
     built_up.cases,
     rolled_sections.cases,
     singular_corners.cases,
+    conventions.cases,
     kernel.cases,
 )
 
