@@ -18,6 +18,7 @@ if TYPE_CHECKING:
 
 _SIZE = (3.3, 3.1)  # of both panels [in]
 _LEFT, _BELOW, _GAP = 0.8, 0.55, 1.1
+_BESIDE = 0.07  # distance of the slope triangle below the curve, as a share of the axis
 _ERROR, _INTERVAL = "#08519c", "#b2182b"
 
 
@@ -89,14 +90,15 @@ def _whole_order(rows: Sequence[ConvergenceRow]) -> float | None:
 
 def _slope_triangle(axes: Axes, nodes: np.ndarray, error: np.ndarray, order: float) -> None:
     """A triangle with the slope of the series, below it, and its order."""
-    x0, x1 = nodes[0] * (nodes[-1] / nodes[0]) ** 0.12, nodes[0] * (nodes[-1] / nodes[0]) ** 0.42
-    drop = (x1 / x0) ** (-order / 2)
-    line = float(np.exp(np.interp(np.log(x0), np.log(nodes), np.log(error))))
+    x = nodes[0] * (nodes[-1] / nodes[0]) ** np.linspace(0.1, 0.4, 9)
+    slope = (x / x[0]) ** (-order / 2)
     low, high = axes.get_ylim()
-    top = line * (low / high) ** 0.09
+    curve = np.exp(np.interp(np.log(x), np.log(nodes), np.log(error)))
+    top = float((curve / slope).min()) * (low / high) ** _BESIDE
+    x0, x1, drop = float(x[0]), float(x[-1]), float(slope[-1])
     axes.plot([x0, x1, x0, x0], [top, top * drop, top * drop, top], color=INK, linewidth=0.8, zorder=3)
     axes.annotate(
-        f"observed order {order:.1f}", (x0, top * drop), (0, -4), textcoords="offset points", size=NOTE, color=INK,
+        f"observed\norder {order:.1f}", (x0, top * drop), (0, -4), textcoords="offset points", size=NOTE, color=INK,
         va="top", zorder=3,
     )  # fmt: skip
 

@@ -6,7 +6,7 @@ from xsec_fem.elementary.formula import HandCalculation
 from xsec_fem.recovery.cuts import CutResult
 from xsec_fem.report.blocks import Block, Heading, Lines, Table
 from xsec_fem.report.numbers import number, point
-from xsec_fem.report.wording import section_size
+from xsec_fem.report.wording import is_twisted, section_size
 from xsec_fem.results import CaseResult, CutComparison, Result
 from xsec_fem.units import UnitSystem
 
@@ -21,7 +21,7 @@ def cut_blocks(result: Result, case: CaseResult, hand: bool = False) -> list[Blo
     if any(len(cut.field.spans) > 1 for cut in case.cuts):
         blocks.append(_walls(result, case))
     remarks = [f"{cut.field.name}: {cut.hand.reason}" for cut in case.cuts if cut.hand.calculation is None]
-    if case.forces.T and (case.forces.Vy or case.forces.Vz):
+    if case.comparison is not None and is_twisted(result, case):
         remarks.append("The field's values hold torsion too; V S/(I t) does not know it.")
     if remarks:
         blocks.append(Lines(tuple(remarks)))

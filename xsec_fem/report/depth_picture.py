@@ -13,6 +13,7 @@ from xsec_fem.report.numbers import number
 from xsec_fem.report.panels import name_axes, panel_page, quiet_grid
 from xsec_fem.report.section_canvas import Canvas, actions_line, fill_parts
 from xsec_fem.report.sheet import NOTE
+from xsec_fem.report.wording import is_twisted
 from xsec_fem.results import CaseResult, Result
 
 if TYPE_CHECKING:
@@ -72,7 +73,9 @@ def depth_figure(result: Result, case: CaseResult, canvas: Canvas) -> Figure | N
     ]
     panels = [(_LEFT, _BELOW, width, _HEIGHT), (_LEFT + width + _GAP, _BELOW, _CHART, _HEIGHT)]
     spare = (panels[1][0], _BELOW + _HEIGHT, _CHART, _KEY)
-    figure, (outline, chart, key) = panel_page([*panels, spare], headings, _notes(case, view, natural > _WIDEST))
+    figure, (outline, chart, key) = panel_page(
+        [*panels, spare], headings, _notes(view, natural > _WIDEST, is_twisted(result, case))
+    )
     half = width / 2 / inches if natural <= _WIDEST else (right - left) * 0.53
     middle = (left + right) / 2
     outline.set_xlim(middle - half, middle + half)
@@ -125,19 +128,23 @@ def _draw_curves(axes: Axes, sweep: Sweep, view: _View) -> None:
     top = float(np.nanmax(largest))
     axes.set_xlim(min(0.0, float(np.nanmin(formula)), float(np.nanmin(sweep.mean))) - 0.02 * top, 1.16 * top)
     quiet_grid(axes)
-    middle = sum(axes.get_ylim()) / 2
-    for values, colour in ((largest, LARGEST), (np.abs(formula), FORMULA)):
-        row = int(np.nanargmax(values))
-        x, d = float(values[row]) * float(np.sign(formula[row]) if colour == FORMULA else 1.0), float(depth[row])
-        up = (colour == LARGEST) == (d < middle)
-        axes.plot([x], [d], "o", color=colour, markersize=4, zorder=5)
-        axes.annotate(
-            number(x, 4), (x, d), (4, 9 if up else -9), textcoords="offset points", size=NOTE, color=colour, weight="bold",
-            va="center", zorder=6, bbox={"boxstyle": "round,pad=0.1", "facecolor": "white", "edgecolor": "none", "alpha": 0.8},
-        )  # fmt: skip
+    _write_extreme(axes, largest, depth, LARGEST, 6)
+    _write_extreme(axes, formula, depth, FORMULA, -6)
 
 
-def _notes(case: CaseResult, view: _View, squeezed: bool) -> list[str]:
+def _write_extreme(axes: Axes, values: FloatArray, depth: FloatArray, colour: str, away: float) -> None:
+    """A point at the value of largest size, the value `away` points to the right of it (left when negative)."""
+    row = int(np.nanargmax(np.abs(values)))
+    x, d = float(values[row]), float(depth[row])
+    axes.plot([x], [d], "o", color=colour, markersize=4, zorder=5)
+    axes.annotate(
+        number(x, 4), (x, d), (away, 0), textcoords="offset points", size=NOTE, color=colour, weight="bold", va="center",
+        ha="left" if away > 0 else "right", zorder=6,
+        bbox={"boxstyle": "round,pad=0.1", "facecolor": "white", "edgecolor": "none", "alpha": 0.8},
+    )  # fmt: skip
+
+
+def _notes(view: _View, squeezed: bool, twisted: bool) -> list[str]:
     turned = "" if view.name == "z" else " The section is turned so that V's line is upright."
     notes = [
         "Each cut runs through the whole section; mean and formula are counted along V and agree by equilibrium. Values within the "
@@ -145,6 +152,6 @@ def _notes(case: CaseResult, view: _View, squeezed: bool) -> list[str]:
     ]
     if squeezed:
         notes.append("The section's width is drawn to another scale than its depth.")
-    if case.forces.T:
+    if twisted:
         notes.append("Torsion is left out of all curves.")
     return notes

@@ -26,8 +26,9 @@ FloatArray = npt.NDArray[np.float64]
 
 _MOST = 6  # joints with a chart of their own
 _ROWS = 3  # charts above each other
-_CHART = (2.7, 1.05)  # [in]
-_PITCH = 1.75  # from chart to chart upward [in]
+_CHART = 2.7  # width of a chart [in]
+_PITCH = (1.9, 2.5)  # smallest and largest distance from chart to chart upward [in]
+_BETWEEN = 0.85  # of it, room for axis labels and titles [in]
 _LEFT, _BELOW, _GAP = 0.85, 0.55, 0.75
 _LARGEST = (4.6, 4.6)  # of the section's panel [in]
 _OFFSET = 0.42  # height of the largest profile drawn on the section [in]
@@ -45,19 +46,20 @@ def joints_figure(result: Result, case: CaseResult, canvas: Canvas) -> Figure | 
     units = result.section.units
     box, inches = canvas.mesh.box, _scale(canvas.mesh.box)
     columns = -(-len(shown) // _ROWS)
-    rows = min(len(shown), _ROWS)
+    rows = -(-len(shown) // columns)
     size = ((box[2] - box[0]) * inches + 0.9, (box[3] - box[1]) * inches + 0.9)
-    height = max(size[1], (rows - 1) * _PITCH + _CHART[1])
+    pitch = min(max(_PITCH[0], (size[1] + _BETWEEN) / rows), _PITCH[1])
+    height = max(size[1], rows * pitch - _BETWEEN)
     panels = [(_LEFT, _BELOW, size[0], height)]
     for k in range(len(shown)):
-        left = _LEFT + size[0] + _GAP + (k // _ROWS) * (_CHART[0] + _GAP)
-        panels.append((left, _BELOW + height - _CHART[1] - (k % _ROWS) * _PITCH, *_CHART))
+        left = _LEFT + size[0] + _GAP + (k // rows) * (_CHART + _GAP)
+        panels.append((left, _BELOW + height + _BETWEEN - (k % rows + 1) * pitch, _CHART, pitch - _BETWEEN))
     headings = [
         result.section.title or "Section",
         f"{case.name}: flow through the joints [{units.flow}] and shear stress across them [{units.stress}]",
         actions_line(result, case),
     ]
-    figure, (drawing, *charts) = panel_page(panels, headings, _notes(case, shown, columns))
+    figure, (drawing, *charts) = panel_page(panels, headings, _notes(case, shown))
     _draw_section(drawing, canvas, box, (size[0] / inches, height / inches), units.length)
     _draw_joints(drawing, result.section, shown, inches, box)
     for axes, (joint, colour, place) in zip(charts, ((j, _colour(k), k + 1) for k, j in enumerate(shown)), strict=True):
@@ -148,19 +150,14 @@ def _label(axes: Axes, k: int, points: FloatArray, taken: list[Point], inches: f
 
 def _draw_chart(axes: Axes, result: Result, joint: JointResult, colour: str, place: int) -> None:
     units = result.section.units
-    axes.set_title(
-        f"{place}  {joint.name}: {number(joint.flow, 4)} {units.flow}",
-        size=SUBTITLE,
-        color=colour,
-        loc="left",
-        parse_math=False,
-    )
+    labels = _bond_labels(joint) if joint.profiles else []
+    title = f"{place}  {joint.name}: {number(joint.flow, 4)} {units.flow}"
+    axes.set_title(title, size=SUBTITLE, color=colour, loc="left", parse_math=False, pad=15.0 if labels else 6.0)
     quiet_grid(axes)
     if joint.kind == "fasteners":
         _draw_rows(axes, joint, colour)
         name_axes(axes, "", f"flow [{units.flow}]")
         return
-    labels = _bond_labels(joint)
     for k, profile in enumerate(joint.profiles):
         start = (joint.bonds[k].root_distance or 0.0) if joint.bonds else 0.0
         for number_, (places, across) in enumerate(chained(profile)):
@@ -170,9 +167,14 @@ def _draw_chart(axes: Axes, result: Result, joint: JointResult, colour: str, pla
             )  # fmt: skip
     if joint.mean is not None and not joint.bonds:
         axes.axhline(joint.mean, color=INK, linewidth=0.8, linestyle="--")
+        words = f"mean {number(joint.mean, 4)}, peak {number(joint.peak or 0.0, 4)} {units.stress}"
+        axes.text(0.5, 0.45, words, size=NOTE, color=INK, ha="center", va="center", transform=axes.transAxes)
     _from_zero(axes)
     if labels:
-        axes.legend(fontsize=NOTE - 1, frameon=False, loc="center", ncols=2, handlelength=1.6)
+        axes.legend(
+            fontsize=NOTE - 1, frameon=False, loc="lower left", ncols=2, handlelength=1.6, bbox_to_anchor=(0.0, 1.05),
+            borderaxespad=0.0, borderpad=0.0,
+        )  # fmt: skip
     from_where = "from the root" if joint.bonds else "along the line"
     name_axes(axes, f"{from_where} [{units.length}]", f"τ across [{units.stress}]")
 
@@ -213,12 +215,15 @@ def _draw_rows(axes: Axes, joint: JointResult, colour: str) -> None:
         )  # fmt: skip
 
 
-def _notes(case: CaseResult, shown: Sequence[JointResult], columns: int) -> list[str]:
+def _notes(case: CaseResult, shown: Sequence[JointResult]) -> list[str]:
     notes = [
-        "Flow: force per length along +x that the part named second exerts on the first. Dashed: mean over the width."
+        "Flow: force per length along +x that the part named second exerts on the first; τ across counts the same way."
     ]
     if any(joint.kind == "glue" for joint in shown):
-        notes.append("On the section: the size of the stress across each line, drawn upright to it, to one scale.")
+        notes.append(
+            "Dashed at glue: mean over the width. On the section: the size of the stress across each line, drawn upright to it, "
+            "to one scale."
+        )
     if any(joint.kind == "fasteners" for joint in shown):
         notes.append(
             "Rows are strips that act without slip: their flow is exact by equilibrium, a stress beside a bolt is not told."

@@ -6,10 +6,12 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from xsec_fem.report.lettering import line_height, wrapped
+from xsec_fem.report.numbers import number
 from xsec_fem.report.sheet import DPI, INK, NOTE, SUBTITLE, TITLE, Box, write_texts
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
+    from matplotlib.axis import Axis
     from matplotlib.figure import Figure
 
 _EDGE = 0.15  # margin round everything [in]
@@ -45,9 +47,19 @@ def panel_page(panels: Sequence[Box], headings: Sequence[str], notes: Sequence[s
 
 def plain_axes(axes: Axes) -> None:
     """Give axes the ticks and thin grey frame of all pictures."""
+    from matplotlib.ticker import FuncFormatter
+
+    for axis in (axes.xaxis, axes.yaxis):
+        axis.set_major_formatter(FuncFormatter(lambda value, _, axis=axis: number(value, 5, _span(axis))))
     axes.tick_params(labelsize=NOTE, colors=INK, width=0.6, length=3, which="both")
     for spine in axes.spines.values():
         spine.set(linewidth=0.5, color="#999999")
+
+
+def _span(axis: Axis) -> float:
+    """What the axis shows, to tell zero from round-off."""
+    low, high = axis.get_view_interval()
+    return abs(float(high) - float(low))
 
 
 def name_axes(axes: Axes, x: str, y: str) -> None:

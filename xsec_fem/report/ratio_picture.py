@@ -15,7 +15,7 @@ from xsec_fem.report.ratio_scale import FARTHEST, RatioScale, ratio_scale
 from xsec_fem.report.section_canvas import Canvas, actions_line, detail_place, draw_rings, open_detail
 from xsec_fem.report.sheet import INK, NOTE, SUBTITLE, Box, Sheet, make_plan, make_sheet
 from xsec_fem.report.stress_picture import RASTERISE_ABOVE
-from xsec_fem.report.wording import section_size
+from xsec_fem.report.wording import is_twisted, section_size
 from xsec_fem.results import CaseResult, Result
 
 if TYPE_CHECKING:
@@ -24,6 +24,7 @@ if TYPE_CHECKING:
 
 FloatArray = npt.NDArray[np.float64]
 
+_RINGS = 2  # triangles from the mask's edge inward in which the ratio is carried on: the edge runs through the first
 _MASK, _HATCH = "#e6e6e6", "#b5b5b5"
 
 
@@ -47,8 +48,7 @@ def ratio_figure(result: Result, case: CaseResult, canvas: Canvas) -> Figure | N
     focus = detail_place(marks[0], result, canvas.mesh) if marks else None
     headings = [
         result.section.title or "Section",
-        f"{case.name}: |τ| by elasticity over V S/(I t), ratio [-]; V S/(I t) is "
-        f"{'good' if case.verdict.grade == 'good' else 'poor' if case.verdict.grade == 'poor' else 'to be used with care'} here",
+        f"{case.name}: |τ| by elasticity over V S/(I t), ratio [-]; verdict: {case.verdict.grade}",
         actions_line(result, case),
     ]
     plan = make_plan(canvas.mesh.box, headings, _notes(result, case, marks), bar=True, detail=focus is not None)
@@ -65,16 +65,32 @@ def ratio_figure(result: Result, case: CaseResult, canvas: Canvas) -> Figure | N
 
 def _map(comparison: Comparison, canvas: Canvas) -> _Map:
     tau = comparison.solved.fields.combine(comparison.forces).tau
+    clear = canvas.mesh.clear if canvas.mesh.clear.any() else np.ones(len(tau), bool)
+    share, small = tau / tau[clear].max(), comparison.limits.small
     with np.errstate(invalid="ignore"):
         ratio = ratio_field(comparison.solved, comparison.forces, small=0.0)
     ratio = np.clip(np.nan_to_num(ratio, nan=1.0, posinf=FARTHEST), 1 / FARTHEST, FARTHEST)
-    share, small = (
-        tau / tau[canvas.mesh.clear].max() if canvas.mesh.clear.any() else tau / tau.max(),
-        comparison.limits.small,
-    )
-    counted = ratio[canvas.mesh.clear & (share >= small)]
+    counted = ratio[clear & (share >= small)]
     low, high = (float(counted.min()), float(counted.max())) if len(counted) else (1.0, 1.0)
-    return _Map(ratio, share, ratio_scale(low, high, comparison.limits), small)
+    scale = ratio_scale(low, high, comparison.limits)
+    return _Map(_carried_on(ratio, share >= small, canvas.mesh.triangles), share, scale, small)
+
+
+def _carried_on(ratio: FloatArray, known: npt.NDArray[np.bool_], triangles: npt.NDArray[np.int64]) -> FloatArray:
+    """The ratio (S,) with nodes under the mask set to what their neighbours have, so that bands reach the mask undistorted.
+
+    There both stresses go to zero and their ratio is round-off.
+    """
+    logs, known = np.where(known, np.log(ratio), 0.0), known.copy()
+    for _ in range(_RINGS):
+        sums, counts = logs[triangles].sum(axis=1), known[triangles].sum(axis=1)
+        total = np.bincount(triangles.ravel(), np.repeat(sums, 3), len(ratio))
+        count = np.bincount(triangles.ravel(), np.repeat(counts, 3), len(ratio))
+        new = ~known & (count > 0)
+        logs[new] = total[new] / count[new]
+        known |= new
+    result: FloatArray = np.exp(logs)
+    return result
 
 
 def _marks(case: CaseResult) -> list[Mark]:
@@ -136,5 +152,5 @@ def _notes(result: Result, case: CaseResult, marks: list[Mark]) -> list[str]:
         f"{100 * limits.care:g} %. Hatched: |τ| below {100 * limits.small:g} % of its largest, where a ratio says nothing."
     )
     cut = "V S/(I t): of the straight cut through the whole section, perpendicular to V, through the point."
-    notes.append(cut + (" Torsion is left out on both sides." if case.forces.T else ""))
+    notes.append(cut + (" Torsion is left out on both sides." if is_twisted(result, case) else ""))
     return notes

@@ -11,7 +11,7 @@ from xsec_fem.elementary.compare import Limits
 
 FloatArray = npt.NDArray[np.float64]
 
-_BEYOND = (1.5, 2.0, 3.0, 5.0, 10.0, 20.0, 50.0)  # steps above 1 + care; their inverses below 1 - care
+_BEYOND = (1.5, 2.0, 3.0, 5.0, 10.0)  # steps above 1 + care; their inverses below 1 - care
 FARTHEST = 100.0  # ratios beyond this, and its inverse, are drawn as this
 _PALEST = 0.16  # of the map's half: colour next to the white band
 
@@ -29,7 +29,11 @@ def ratio_scale(low: float, high: float, limits: Limits) -> RatioScale:
     inner = [1 - limits.care, 1 - limits.good, 1 + limits.good, 1 + limits.care]
     above = [step for step in _BEYOND if step > inner[-1] * 1.1]
     below = [1 / step for step in _BEYOND if 1 / step < inner[0] / 1.1]
-    levels = [*_up_to(below, low)[::-1], *inner, *_up_to(above, high)]
+    levels = [
+        *(_up_to(below, low)[::-1] if low < inner[0] else []),
+        *inner,
+        *(_up_to(above, high) if high > inner[-1] else []),
+    ]
     return RatioScale(np.array(levels), _colours(np.array(levels), limits))
 
 

@@ -8,7 +8,7 @@ from xsec_fem.elementary.compare import Comparison
 from xsec_fem.elementary.verdict import GOOD, Finding
 from xsec_fem.report.blocks import Block, Heading, Lines, Table
 from xsec_fem.report.numbers import number, point
-from xsec_fem.report.wording import section_size
+from xsec_fem.report.wording import is_twisted, section_size
 from xsec_fem.results import CaseResult, Result
 
 
@@ -22,7 +22,9 @@ def verdict_blocks(result: Result, case: CaseResult, every: bool = False) -> lis
     findings = [*case.verdict.parts, *case.verdict.walls]
     shown = [finding for finding in findings if every or finding.grade != GOOD]
     blocks: list[Block] = [Heading(f"V S/(I t) against the elasticity solution: {case.verdict.grade}", 3)]
-    blocks.append(Lines((_headline(case),)))
+    blocks.append(
+        Lines((case.verdict.message + (" Torsion is left out on both sides." if is_twisted(result, case) else ""),))
+    )
     if shown:
         blocks.append(_table(result, shown))
     reasons = [line for reason, line in _reasons(shown) if reason not in case.verdict.message]
@@ -31,12 +33,6 @@ def verdict_blocks(result: Result, case: CaseResult, every: bool = False) -> lis
         limit = 100 * case.comparison.limits.good
         reasons.append(f"{good} more within {limit:g} %: xsec-fem compare lists them")
     return [*blocks, Lines(tuple(reasons))] if reasons else blocks
-
-
-def _headline(case: CaseResult) -> str:
-    """The verdict's sentence; in a case with torsion, that torsion is left out of both sides."""
-    message = case.verdict.message if case.verdict else ""
-    return message + (" Torsion is left out on both sides." if case.forces.T else "")
 
 
 def _table(result: Result, findings: Sequence[Finding]) -> Table:

@@ -9,7 +9,7 @@ import numpy as np
 
 from xsec_fem.model.section import Actions
 from xsec_fem.report.numbers import number
-from xsec_fem.results import Result
+from xsec_fem.results import CaseResult, Result
 from xsec_fem.units import UnitSystem
 
 _FORCES, _MOMENTS = ("N", "Vy", "Vz"), ("T", "My", "Mz")
@@ -51,6 +51,12 @@ def unique_slugs(names: list[str]) -> list[str]:
             text = f"{base}_{count}"
         found.append(text)
     return found
+
+
+def is_twisted(result: Result, case: CaseResult) -> bool:
+    """Return True when there is a torque about the shear centre beside the shear, more than round-off."""
+    shear = abs(case.forces.Vy) + abs(case.forces.Vz)
+    return number(case.T_total, scale=shear * section_size(result)) != "0"
 
 
 def case_prefixes(result: Result) -> list[str]:
