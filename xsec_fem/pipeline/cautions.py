@@ -10,6 +10,7 @@ import numpy as np
 
 from xsec_fem.model.section import Section
 from xsec_fem.pipeline.joint_cautions import joint_cautions
+from xsec_fem.pipeline.shear_cautions import shear_cautions
 from xsec_fem.pipeline.solution import Solution
 from xsec_fem.recovery.corners import Corner, corner_mask
 from xsec_fem.recovery.section_forces import reduce_actions
@@ -56,6 +57,7 @@ def cautions(evidence: Evidence) -> tuple[Caution, ...]:
     for source in (_accuracy, _load_points, _corners, _unequal_nu, _poisson, _restrained_warping, _slender_walls):
         found += source(evidence)
     found += joint_cautions(evidence.section, evidence.cases)
+    found += shear_cautions(evidence.section, evidence.cases, evidence.fields, evidence.corners)
     return tuple(found)
 
 
