@@ -132,6 +132,11 @@ class Record:
     seconds: float = field(default=0.0, compare=False)
 
     @property
+    def inside_strict(self) -> bool:
+        """True when there is a strict interval and nothing is wrong: then the reference lies in it."""
+        return self.strict and self.interval is not None and self.ok
+
+    @property
     def scale(self) -> float:
         """What difference and allowed are divided by to be shown: |reference| where the tolerance is relative, else 1."""
         return abs(self.reference) if self.relative else 1.0

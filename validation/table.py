@@ -29,11 +29,16 @@ def blocks(records: Sequence[Record]) -> list[Block]:
     content: list[Block] = []
     for group, members in by_group(records):
         rows = tuple((*row_cells(record), f"{record.source} ({record.provenance})") for record in members)
-        content += [Heading(group[0].upper() + group[1:]), Table(HEADER, rows, ALIGN)]
+        content += [Heading(heading(group)), Table(HEADER, rows, ALIGN)]
     misses = [f"{record.case_id}: {record.message}" for record in records if not record.ok]
     if misses:
         content += [Heading("Misses"), Lines(tuple(misses))]
     return [*content, Heading("Summary"), Lines((summary_line(records),))]
+
+
+def heading(group: str) -> str:
+    """Return a group's name with a capital."""
+    return group[:1].upper() + group[1:]
 
 
 def row_cells(record: Record) -> tuple[str, ...]:
@@ -56,17 +61,22 @@ def row_cells(record: Record) -> tuple[str, ...]:
 
 
 def summary_line(records: Sequence[Record]) -> str:
-    """Return how many checks there are, within what, and how many missed."""
+    """Return the counts, and what the mark behind an interval says where there is one."""
+    loose = any(record.interval is not None and not record.strict for record in records)
+    return (
+        f"{counts(records)}. Intervals marked * are not strict: polynomials stand for curved sides."
+        if loose
+        else f"{counts(records)}."
+    )
+
+
+def counts(records: Sequence[Record]) -> str:
+    """Return how many checks and groups there are, how many hold, and how many references lie in strict intervals."""
     misses = sum(not record.ok for record in records)
-    strict = [record for record in records if record.strict]
     groups = len(by_group(records))
+    inside = sum(record.inside_strict for record in records)
     text = f"{len(records)} checks in {groups} groups: {len(records) - misses} within their tolerance, {misses} missed"
-    if strict:
-        text += f"; {len(strict)} of them with the reference inside a strictly guaranteed interval of ours"
-        text = (
-            text if not misses else text.replace("of them with", "compared with").replace("the reference inside ", "")
-        )
-    return f"{text}. Intervals marked * leave out the error of curved sides." if _has_loose(records) else f"{text}."
+    return f"{text}; {inside} references lie in a strictly guaranteed interval of ours" if inside else text
 
 
 def document(records: Sequence[Record]) -> str:
@@ -75,10 +85,6 @@ def document(records: Sequence[Record]) -> str:
     misses = sum(not record.ok for record in records)
     head = {"schema": "xsec_fem validation 1", "checks": len(records), "missed": misses}
     return json.dumps({**head, "records": checks}, indent=1, ensure_ascii=False, allow_nan=False) + "\n"
-
-
-def _has_loose(records: Sequence[Record]) -> bool:
-    return any(record.interval is not None and not record.strict for record in records)
 
 
 def _size(value: float, record: Record) -> str:

@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 import argparse
+import os
 import sys
 from collections.abc import Callable, Iterator, Sequence
 from contextlib import contextmanager
 from pathlib import Path
+from tempfile import TemporaryDirectory
 from typing import Any
 
 from xsec_fem.cli.exit_codes import FINE, OVER_STRENGTH
@@ -42,12 +44,51 @@ def run(args: argparse.Namespace) -> int:
     cases = _chosen(args)
     with progress_bar(len(cases)) as progress:
         records = validation_module("runner").run(cases, args.jobs, progress)
+    files = _write_files(records, args)
     table = validation_module("table")
     if args.json:
         sys.stdout.write(table.document(records))
     else:
         print_blocks(table.blocks(records), sys.stdout)
+        for file in files:
+            print(f"  written: {file}")
     return FINE if all(record.ok for record in records) else MISSED
+
+
+def _write_files(records: Sequence[Any], args: argparse.Namespace) -> list[Path]:
+    """Draw and write what was asked for; return the files."""
+    files: list[Path] = []
+    if getattr(args, "write_readme", False):
+        readme = validation_module("readme")
+        with _writing(readme.README, "--write-readme"):
+            readme.README.write_text(readme.readme(records), encoding="utf-8")
+        files.append(readme.README)
+    if args.pictures is None and args.html is None:
+        return files
+    studied = validation_module("convergence").all_curves(args.jobs or os.cpu_count() or 1)
+    with TemporaryDirectory() as scratch:
+        folder = args.pictures or Path(scratch)
+        with _writing(folder, "--pictures"):
+            folder.mkdir(parents=True, exist_ok=True)
+            pictures = validation_module("pictures").write_pictures(folder, records, studied)
+        if args.html is not None:
+            with _writing(args.html, "--html"):
+                args.html.parent.mkdir(parents=True, exist_ok=True)
+                args.html.write_text(validation_module("page").page(records, pictures), encoding="utf-8")
+            files.append(args.html)
+        return [*files, *(pictures if args.pictures else [])]
+
+
+@contextmanager
+def _writing(target: Path, option: str) -> Iterator[None]:
+    """Turn any failure to write into one InputError that names the option, the target and the reason."""
+    try:
+        yield
+    except OSError as error:
+        reason = (error.strerror or str(error)).lower()
+        raise InputError(
+            [Fault("", option, f"cannot be written: {reason}", str(target), "Give another place.")]
+        ) from error
 
 
 def _chosen(args: argparse.Namespace) -> Sequence[Any]:
@@ -60,6 +101,8 @@ def _chosen(args: argparse.Namespace) -> Sequence[Any]:
         groups = ", ".join(dict.fromkeys(case.group for case in families.all_cases()))
         text = " ".join(args.pattern) + (" --quick" if args.quick else "")
         faults.append(Fault("", "PATTERN", "must fit at least one case", text, f"Groups are: {groups}."))
+    if getattr(args, "write_readme", False) and len(cases) < len(families.all_cases()):
+        faults.append(Fault("", "--write-readme", "needs all cases", None, "Leave PATTERN and --quick out."))
     if faults:
         raise InputError(faults)
     return cases
