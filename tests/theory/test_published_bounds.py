@@ -1,11 +1,12 @@
 """Our intervals for IT against published two-sided bounds that hold for every section of their class.
 
-T = IT/4 is the functional of those papers (the stress function of div grad u = -1). From memory: G. Polya, Torsional rigidity,
-principal frequency, electrostatic capacity and symmetrization, Quart. Appl. Math. 6, 1948 (the circle has the largest IT of all
-simply connected sections of its area); G. Polya, Two more inequalities between physical and geometrical quantities, J. Indian Math.
-Soc. 24, 1960 and E. Makai, On the principal frequency of a membrane and the torsional rigidity of a beam, 1962 (convex
-sections: A³/(3 L²) <= T <= 2 A³/(3 L²)); E. Nicolai's inequality IT <= 4 Iu Iv/(Iu + Iv), with equality for ellipses (G. Polya, G. Szego, Isoperimetric
-Inequalities in Mathematical Physics, 1951). The circle and the thin rectangle confirm the constants below.
+T = IT/4 is the functional of those papers (the stress function of div grad u = -1). From memory:
+G. Polya, Torsional rigidity, principal frequency, electrostatic capacity and symmetrization, Quart. Appl. Math. 6, 1948 (of all
+simply connected sections of an area the circle has the largest IT);
+G. Polya, Two more inequalities between physical and geometrical quantities, J. Indian Math. Soc. 24, 1960, and E. Makai, On the
+principal frequency of a membrane and the torsional rigidity of a beam, 1962 (convex sections: A³/(3 L²) <= T <= 2 A³/(3 L²));
+E. Nicolai's inequality IT <= 4 Iu Iv/(Iu + Iv), equal for ellipses: G. Polya, G. Szego, Isoperimetric Inequalities in Mathematical
+Physics, 1951. The circle and the thin rectangle confirm the constants below.
 """
 
 import numpy as np
