@@ -69,10 +69,10 @@ def stiffness_matrix(mesh: Mesh, G: FloatArray, numbering: IntArray) -> sp.csc_m
 
 
 def element_loads(batch: Batch, scalar: FloatArray | None, flux: FloatArray | None) -> FloatArray:
-    """Return ∫ s v_i + ∫ q . grad v_i of a batch, shape (m, n, k).
+    """Return ∫ s v_i + ∫ q . grad v_i of a batch, shape (m, n, k) [unit of q times mm].
 
-    scalar : (m, Q, k) values of s at the rule's points, or None for zero.
-    flux : (m, Q, k, 2) values of q there, or None for zero.
+    scalar : (m, Q, k) values of s at the rule's points [unit of q per mm], or None for zero.
+    flux : (m, Q, k, 2) values of q there, or None for zero. ValueError when both are None.
     """
     parts: list[FloatArray] = []
     weights = batch.rule.weights
@@ -90,7 +90,7 @@ def element_loads(batch: Batch, scalar: FloatArray | None, flux: FloatArray | No
 
 
 def add_at_nodes(total: FloatArray, nodes: IntArray, values: FloatArray) -> None:
-    """Add element values (m, n, k) into nodal totals (N, k), in place."""
+    """Add element values (m, n, k) into nodal totals (N, k), in place; `nodes` (m, n) are their numbers."""
     where = nodes.ravel()
     for column in range(total.shape[1]):
         total[:, column] += np.bincount(where, values[..., column].ravel(), minlength=len(total))

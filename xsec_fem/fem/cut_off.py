@@ -41,7 +41,10 @@ class EdgeMoments:
     origin: FloatArray
 
     def between(self, piece: IntArray, start: FloatArray, end: FloatArray) -> FloatArray:
-        """Return ∫ (s, s²/2, s h) dh along edges of the pieces (J,) from parameter start (J,) to end (J,), shape (J, 3)."""
+        """Return ∫ (s, s²/2, s h) dh along parts of edges, shape (J, 3) [mm², mm³].
+
+        piece : (J,) pieces; start, end : (J,) parameters on their edges, 0 to 1 [-].
+        """
         frame = np.stack([tangent_of(self.pieces.normal), self.pieces.normal], axis=1)
         polynomial = self.curves.coefficients[self.pieces.edge[piece]].copy()
         polynomial[:, 0] -= self.origin
@@ -54,24 +57,27 @@ class EdgeMoments:
         return np.stack([(weights * f).sum(axis=1) for f in (s, s * s / 2, s * h)], axis=1)
 
     def whole(self, piece: IntArray) -> FloatArray:
-        """Return the integrals over whole pieces (J,), shape (J, 3)."""
+        """Return the integrals over whole pieces (J,), shape (J, 3) [mm², mm³]."""
         return self.between(piece, *self.pieces.bounds[piece].T)
 
     def below(self, hits: EdgeHits, chosen: IntArray) -> FloatArray:
-        """Return the integrals over the lower part of each crossed piece, for the chosen hits (m,), shape (m, 3)."""
+        """Return the integrals over the lower part of each crossed piece, for the chosen hits (m,), shape (m, 3) [mm², mm³]."""
         piece, u = hits.piece[chosen], hits.u[chosen]
         low, high = self.pieces.bounds[piece].T
         rising = self.pieces.rising[piece]
         return self.between(piece, np.where(rising, low, u), np.where(rising, u, high))
 
     def in_section_axes(self, integrals: FloatArray) -> FloatArray:
-        """Turn (∫w, ∫w s, ∫w h) into (∫w, ∫w y, ∫w z), shape (..., 3), y and z from the origin."""
+        """Turn (∫w, ∫w s, ∫w h) into (∫w, ∫w y, ∫w z), shape (..., 3) [mm², mm³ times the unit of w], y and z from the origin."""
         frame = np.stack([tangent_of(self.pieces.normal), self.pieces.normal])
         return np.concatenate([integrals[..., :1], integrals[..., 1:] @ frame], axis=-1)
 
 
 def edge_jumps(curves: EdgeCurves, weight: FloatArray) -> FloatArray:
-    """Return weight of the first triangle minus that of the second, zero beyond free edges: (K,) from (P,) per part."""
+    """Return the jump of a weight across every edge, shape (K,), in the unit of the weight.
+
+    It is that of the first triangle minus that of the second, which is zero beyond free edges; weight : (P,) per part.
+    """
     sides, part_of = curves.edges.triangles, curves.mesh.part_of
     second = np.where(sides[:, 1] >= 0, weight[part_of[sides[:, 1]]], 0.0)
     return np.asarray(weight[part_of[sides[:, 0]]] - second)
@@ -83,7 +89,7 @@ def half_plane_moments(
     """Integrate over what lies below each level, and measure the lines inside the section.
 
     normal : (2,) unit. levels : (L,) ascending [mm]. weight : (P,) per part, E for first moments. origin : (2,) [mm].
-    Returns (∫w, ∫w y, ∫w z), shape (L, 3), y and z from the origin, and the length (L,) of each line inside.
+    Returns (∫w, ∫w y, ∫w z), shape (L, 3), y and z from the origin, and the length (L,) of each line inside [mm].
     """
     pieces = curves.pieces(normal)
     jump = edge_jumps(curves, weight)[pieces.edge]

@@ -37,7 +37,7 @@ def _powers(order: int, flat: FloatArray) -> FloatArray:
 
 
 def basis_values(order: int, points: FloatArray) -> FloatArray:
-    """Return the basis functions of an order at reference points (..., 2): shape (..., n).
+    """Return the basis functions of an order at reference points (..., 2): shape (..., n) [-].
 
     The same numbers as LagrangeTriangle.values, by products instead of powers: these points are many, each used once.
     """
@@ -51,7 +51,7 @@ def basis_values(order: int, points: FloatArray) -> FloatArray:
 
 
 def reference_points(crossings: Crossings, chosen: IntArray, shares: FloatArray) -> FloatArray:
-    """Return reference coordinates (m, Q, 2) at the shares (Q,), 0 to 1, of the chosen intervals (m,).
+    """Return reference coordinates, shape (m, Q, 2) [-], at the shares (Q,), 0 to 1, of the chosen intervals (m,).
 
     Straight triangles: on the chord. Curved ones: Newton's method on the map, to the point of the line.
     """
@@ -95,7 +95,7 @@ def _inverse_map(order: int, nodes: FloatArray, at: FloatArray, target: FloatArr
 
 
 def positions(crossings: Crossings, chosen: IntArray, shares: FloatArray) -> FloatArray:
-    """Return positions along the line (m, Q) at the shares (Q,) of the chosen intervals (m,) [mm]."""
+    """Return positions along the line, shape (m, Q), at the shares (Q,) of the chosen intervals (m,) [mm]."""
     start, end = crossings.start[chosen, None], crossings.end[chosen, None]
     return np.asarray(start + shares * (end - start))
 
@@ -107,12 +107,12 @@ def _places(crossings: Crossings, chosen: IntArray, shares: FloatArray) -> Float
 
 
 def sample_places(crossings: Crossings, shares: FloatArray) -> FloatArray:
-    """Return the places (I, Q, 2) at the shares (Q,) of all intervals [mm]."""
+    """Return the places, shape (I, Q, 2), at the shares (Q,) of all intervals [mm]."""
     return _places(crossings, np.arange(len(crossings.span)), shares)
 
 
 def sample_values(crossings: Crossings, shares: FloatArray, at_nodes: FloatArray, numbering: IntArray) -> FloatArray:
-    """Return functions at the shares (Q,) of all intervals, shape (I, Q, k).
+    """Return functions at the shares (Q,) of all intervals, shape (I, Q, k), in the unit of `at_nodes`.
 
     at_nodes : (S, k) values; numbering : (M, n) which of them are at a triangle's nodes.
     """

@@ -20,7 +20,7 @@ _DIRECTIONS = np.array([[1.0, 0.0], [0.0, 1.0], [0.70710678, 0.70710678], [0.707
 
 
 def bisection_codes(mesh: Mesh) -> IntArray:
-    """Return the path of each triangle through the halvings, (M,): one bit a level, the first halving in the highest bit."""
+    """Return the path of each triangle through the halvings, shape (M,): one bit a level, the first halving in the highest bit."""
     levels = max(0, int(np.floor(np.log2(max(len(mesh.triangles), 1) / _LEAF))))
     centre = mesh.nodes[mesh.triangles[:, :3]].mean(axis=1)
     projections = centre @ _DIRECTIONS.T
@@ -47,7 +47,7 @@ def bisection_codes(mesh: Mesh) -> IntArray:
 
 
 def dissection_numbering(mesh: Mesh) -> IntArray:
-    """Return the place of each node in the elimination order, a permutation of shape (N,)."""
+    """Return the place of each node in the elimination order, a permutation of shape (N,). Source: George 1973."""
     codes = bisection_codes(mesh)
     size = len(mesh.nodes)
     flat = mesh.triangles.ravel()

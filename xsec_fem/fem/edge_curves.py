@@ -25,7 +25,7 @@ _STRAIGHT = 1e-12  # inner nodes this share of the edge away from its chord's ev
 
 
 def tangent_of(normal: FloatArray) -> FloatArray:
-    """Return the unit direction (2,) that has the unit normal (2,) on its left: (0, 1) -> (1, 0)."""
+    """Return the unit direction, shape (2,) [-], that has the unit normal (2,) on its left: (0, 1) -> (1, 0)."""
     return np.array([normal[1], -normal[0]])
 
 
@@ -48,17 +48,17 @@ class EdgePieces:
 
     @cached_property
     def low(self) -> FloatArray:
-        """(J,) lower of the two heights [mm]."""
+        """Lower of the two heights, shape (J,) [mm]."""
         return np.asarray(self.heights.min(axis=1))
 
     @cached_property
     def high(self) -> FloatArray:
-        """(J,) higher of the two heights [mm]."""
+        """Higher of the two heights, shape (J,) [mm]."""
         return np.asarray(self.heights.max(axis=1))
 
     @property
     def rising(self) -> npt.NDArray[np.bool_]:
-        """(J,) True where the height grows with the parameter."""
+        """True where the height grows with the parameter, shape (J,)."""
         result: npt.NDArray[np.bool_] = self.heights[:, 1] > self.heights[:, 0]
         return result
 
@@ -72,12 +72,12 @@ class EdgeCurves:
 
     @cached_property
     def nodes(self) -> IntArray:
-        """(K, p+1) nodes of each edge, walking round its first triangle."""
+        """Nodes of each edge, walking round its first triangle, shape (K, p+1)."""
         return edge_nodes(self.mesh, self.edges, np.arange(len(self.edges.corners)))
 
     @cached_property
     def coefficients(self) -> FloatArray:
-        """(K, p+1, 2) coefficients of x(u), lowest power first [mm]."""
+        """Coefficients of x(u), lowest power first, shape (K, p+1, 2) [mm]."""
         powers = np.arange(self.mesh.order + 1)
         inverse = np.linalg.inv((powers[:, None] / self.mesh.order) ** powers)
         result: FloatArray = np.einsum("ij,kjd->kid", inverse, self.mesh.nodes[self.nodes])
@@ -91,7 +91,7 @@ class EdgeCurves:
 
     @cached_property
     def curved(self) -> npt.NDArray[np.bool_]:
-        """(K,) True for edges that are not straight with evenly spaced nodes."""
+        """True for edges that are not straight with evenly spaced nodes, shape (K,)."""
         x = self.mesh.nodes[self.nodes]
         share = np.linspace(0.0, 1.0, self.mesh.order + 1)[:, None]
         chord = x[:, -1] - x[:, 0]
@@ -110,7 +110,7 @@ class EdgeCurves:
         return np.stack([evaluate(c[..., d], u) for d in (0, 1)], axis=-1)
 
     def pieces(self, normal: FloatArray) -> EdgePieces:
-        """Return the pieces of all edges along a unit direction (2,); heights in mm."""
+        """Return the pieces of all edges along a unit direction of shape (2,), arrays as in EdgePieces; heights in mm."""
         heights = self.mesh.nodes @ normal
         straight, bent = np.flatnonzero(~self.curved), np.flatnonzero(self.curved)
         ends = heights[self.nodes[:, [0, -1]]]

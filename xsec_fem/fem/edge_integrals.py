@@ -18,14 +18,17 @@ IntArray = npt.NDArray[np.int64]
 
 @lru_cache
 def local_edge_nodes(order: int) -> IntArray:
-    """Return the places (3, p+1) of the nodes of edge 0, 1, 2 in a triangle's list, walking counter-clockwise."""
+    """Return the places of the nodes of edge 0, 1, 2 in a triangle's list, shape (3, p+1), walking counter-clockwise."""
     inner = [list(range(3 + e * (order - 1), 3 + (e + 1) * (order - 1))) for e in range(3)]
     return np.array([[e, *inner[e], (e + 1) % 3] for e in range(3)])
 
 
 @lru_cache
 def line_basis(order: int, degree: int) -> tuple[FloatArray, FloatArray, FloatArray]:
-    """Return weights (Q,), values (Q, p+1) and derivatives (Q, p+1) of the edge's basis at a rule of that degree."""
+    """Return weights (Q,), values and derivatives, each of shape (Q, p+1), of the edge's basis at a rule of that degree [-].
+
+    The derivatives are by the edge's parameter, 0 to 1.
+    """
     rule = interval_rule(degree)
     powers = np.arange(order + 1)
     inverse = np.linalg.inv((powers[:, None] / order) ** powers)
@@ -43,10 +46,10 @@ def edge_nodes(
 def edge_nodes(
     mesh: Mesh, edges: Edges, chosen: IntArray, of: IntArray | None = None, with_normals: bool = False
 ) -> IntArray | tuple[IntArray, FloatArray]:
-    """Return the node numbers (K, p+1) of the chosen edges, walking counter-clockwise round the triangle `of` (K,).
+    """Return the node numbers of the chosen edges (K,), shape (K, p+1), walking counter-clockwise round the triangle `of` (K,).
 
     `of` is one of each edge's two triangles (the first by default). With normals: also the unit normals (K, p+1, 2) at
-    the nodes, out of that triangle.
+    the nodes, out of that triangle [-].
     """
     owner = edges.triangles[chosen, 0] if of is None else of
     local = np.where(edges.triangles[chosen, 0] == owner, edges.local[chosen, 0], edges.local[chosen, 1])
@@ -69,7 +72,7 @@ def _products(mesh: Mesh, nodes: IntArray) -> tuple[FloatArray, FloatArray]:
 
 
 def edge_lengths(mesh: Mesh, edges: Edges, chosen: IntArray) -> FloatArray:
-    """Return the lengths (K,) of the chosen edges along their curves [mm]."""
+    """Return the lengths of the chosen edges (K,) along their curves, shape (K,) [mm]."""
     ds, _ = _products(mesh, edge_nodes(mesh, edges, chosen))
     result: FloatArray = ds.sum(axis=1)
     return result

@@ -35,12 +35,12 @@ class Edges:
 
     @property
     def free(self) -> IntArray:
-        """Numbers of the edges on the free boundary."""
+        """Numbers of the edges on the free boundary, shape (F,)."""
         return np.flatnonzero(self.triangles[:, 1] < 0)
 
 
 def mesh_edges(mesh: Mesh) -> Edges:
-    """Return the edges of a mesh, arrays (K, 2) and (M, 3); an edge of more than two triangles raises ValueError."""
+    """Return the edges of a mesh, arrays of shape (K, 2) and (M, 3); an edge of more than two triangles raises ValueError."""
     count = len(mesh.triangles)
     ends = np.sort(mesh.triangles[:, [[0, 1], [1, 2], [2, 0]]].reshape(-1, 2), axis=1)
     keys = ends[:, 0] * len(mesh.nodes) + ends[:, 1]
@@ -61,7 +61,7 @@ def mesh_edges(mesh: Mesh) -> Edges:
 
 
 def edges_between(mesh: Mesh, edges: Edges, first: Collection[str], second: Collection[str]) -> IntArray:
-    """Return the edges (K,) shared by a triangle of a part in `first` and one of a part in `second`."""
+    """Return the edges, shape (K,), shared by a triangle of a part in `first` and one of a part in `second`."""
     inner = np.flatnonzero(edges.triangles[:, 1] >= 0)
     sides = [np.array([name in names for name in mesh.part_names]) for names in (first, second)]
     a, b = mesh.part_of[edges.triangles[inner]].T
@@ -70,7 +70,7 @@ def edges_between(mesh: Mesh, edges: Edges, first: Collection[str], second: Coll
 
 
 def edges_round(edges: Edges, inside: npt.NDArray[np.bool_]) -> IntArray:
-    """Return the edges (K,) with one triangle inside (M,) and one outside."""
+    """Return the edges, shape (K,), with one triangle inside and one outside; `inside` (M,) marks the triangles."""
     inner = np.flatnonzero(edges.triangles[:, 1] >= 0)
     sides = inside[edges.triangles[inner]]
     between: IntArray = inner[sides[:, 0] != sides[:, 1]]
@@ -78,7 +78,7 @@ def edges_round(edges: Edges, inside: npt.NDArray[np.bool_]) -> IntArray:
 
 
 def connected_bodies(mesh: Mesh, edges: Edges, without: IntArray | None = None) -> IntArray:
-    """Return the body number (M,) of each triangle: triangles are connected when they share an edge.
+    """Return the body number of each triangle, shape (M,): triangles are connected when they share an edge.
 
     `without` are edge numbers that do not connect (a joint taken out).
     """

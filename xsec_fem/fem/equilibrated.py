@@ -60,7 +60,7 @@ class FluxProblem:
 
     @cached_property
     def inverse_G(self) -> FloatArray:
-        """(P, 2, 2) inverse of G [1/MPa]."""
+        """Inverse of G per part, shape (P, 2, 2) [1/MPa]."""
         return np.asarray(np.linalg.inv(self.G), dtype=np.float64)
 
     @property
@@ -74,7 +74,10 @@ class FluxProblem:
         return 3 * (self.degree + 1)
 
     def source_coefficients(self, batch: Batch) -> FloatArray:
-        """(m, k, nl) div s of a batch's triangles, -source det J, in orthonormal polynomials of the reference triangle."""
+        """Return div s of a batch's triangles, -source det J, shape (m, k, nl) [MPa mm per unit of each column].
+
+        k columns; nl coefficients of the orthonormal polynomials of the reference triangle.
+        """
         curved = _is_curved(batch)
         tables = flux_tables(self.mesh.order, curved)
         positions, _, det = map_points(self.mesh, batch.elements, tables.source_points, not curved)
@@ -121,10 +124,10 @@ class EquilibratedFlux:
         return result / batch.det[..., None]
 
     def edge_fluxes(self, batch: Batch) -> FloatArray:
-        """Return the fluxes outward at the Gauss points of edges 0, 1, 2, walking counter-clockwise: (m, 3 (k+1), k) [N/mm].
+        """Return the fluxes outward at the Gauss points of edges 0, 1, 2, walking counter-clockwise [N/mm per unit of each column].
 
-        They are Gauss weight times normal stress times edge length per unit of parameter, so that they sum to the
-        resultant of each edge.
+        Their shape is (m, ne, k), ne = `flux_count` and k columns. They are Gauss weight times normal stress times edge length
+        per unit of parameter, so that they sum to the resultant of each edge.
         """
         last = self.problem.flux_count - 1
         fluxes = _lift_fluxes(self.problem, self.problem.source_coefficients(batch))
@@ -257,7 +260,7 @@ def _edge_loads(local: _Local, multipliers: FloatArray) -> FloatArray:
 
 
 def solve_fluxes(problem: FluxProblem, names: tuple[str, ...]) -> EquilibratedFlux:
-    """Solve for all columns of the problem, one name each, with one factorisation (N, mm, MPa).
+    """Solve for all columns of the problem, one name each, with one factorisation (N, mm, MPa). Source: Arnold & Brezzi 1985.
 
     Raises
     ------

@@ -65,14 +65,14 @@ class FluxTables:
 
 
 def free_fields(degree: int, points: FloatArray) -> FloatArray:
-    """Return the fields of RT_k without divergence at points (Q, 2): shape (nz, 2, Q)."""
+    """Return the fields of RT_k without divergence at points (Q, 2): shape (nz, 2, Q) [-]. Source: Raviart & Thomas 1977."""
     element = raviart_thomas(degree)
     values, last = element.values(points).transpose(1, 2, 0), element.flux_count - 1
     return np.concatenate([values[:last] - values[last], values[last + 1 + element.divergence_count :]])
 
 
 def lift_fields(degree: int, source: int, points: FloatArray) -> FloatArray:
-    """Return the fields of divergence pi_l, l up to the degree of the source, at points (Q, 2): shape (nl, 2, Q)."""
+    """Return the fields of divergence pi_l, l up to the degree of the source, at points (Q, 2): shape (nl, 2, Q) [-]."""
     radial = (points - 1 / 3).T / np.sqrt(2)  # divergence sqrt 2 = pi_0
     fields = [radial[None]]
     low = min(polynomial_count(degree), polynomial_count(source))
@@ -86,7 +86,7 @@ def lift_fields(degree: int, source: int, points: FloatArray) -> FloatArray:
 
 @lru_cache
 def flux_tables(order: int, curved: bool) -> FluxTables:
-    """Return the tables for warping functions of that order, 1 to 5."""
+    """Return the tables for warping functions of that order, 1 to 5, arrays of the shapes in FluxTables [-]."""
     rule = curved_rule(order) if curved else straight_rule(order)
     degree, source = flux_degree(order), source_degree(order, curved)
     free = free_fields(degree, rule.points)

@@ -55,17 +55,17 @@ class EdgeHits:
 
     @property
     def edge(self) -> IntArray:
-        """(H,) edge of each hit."""
+        """Edge of each hit, shape (H,)."""
         return self.pieces.edge[self.piece]
 
     @cached_property
     def points(self) -> FloatArray:
-        """(H, 2) places [mm]."""
+        """Places of the hits, shape (H, 2) [mm]."""
         return self.curves.points(self.edge, self.u)
 
     @cached_property
     def position(self) -> FloatArray:
-        """(H,) place along the line [mm]."""
+        """Place of each hit along its line, shape (H,) [mm]."""
         return np.asarray(self.points @ tangent_of(self.pieces.normal))
 
 
@@ -75,7 +75,10 @@ def tolerance(curves: EdgeCurves) -> float:
 
 
 def edge_hits(curves: EdgeCurves, pieces: EdgePieces, levels: FloatArray, used: IntArray | None = None) -> EdgeHits:
-    """Return all crossings of lines n . x = levels (L,), ascending, with the pieces; `used` (U,) restricts these [mm]."""
+    """Return all crossings of lines n . x = level with the pieces, arrays of shape (H,) as in EdgeHits [mm].
+
+    levels : (L,) ascending. used : (U,) the pieces looked at, all when None.
+    """
     chosen = np.arange(len(pieces.edge)) if used is None else used
     slack = tolerance(curves)
     first = np.searchsorted(levels, pieces.low[chosen] + slack, side="right")
@@ -124,41 +127,41 @@ class Crossings:
 
     @property
     def normal(self) -> FloatArray:
-        """(2,) unit normal of the lines."""
+        """Unit normal of the lines, shape (2,) [-]."""
         return self.hits.pieces.normal
 
     @property
     def tangent(self) -> FloatArray:
-        """(2,) unit direction of the lines, the normal on its left."""
+        """Unit direction of the lines, the normal on its left, shape (2,) [-]."""
         return tangent_of(self.normal)
 
     @property
     def levels(self) -> FloatArray:
-        """(L,) n . x of the lines, ascending [mm]."""
+        """n . x of the lines, ascending, shape (L,) [mm]."""
         return self.hits.levels
 
     @property
     def line(self) -> IntArray:
-        """(I,) line of each interval."""
+        """Line of each interval, shape (I,)."""
         return self.span_line[self.span]
 
     @property
     def span_length(self) -> FloatArray:
-        """(S,) length of each span, the t of the wall crossed [mm]."""
+        """Length of each span, the t of the wall crossed, shape (S,) [mm]."""
         return self.span_end - self.span_start
 
     @property
     def length(self) -> FloatArray:
-        """(L,) sum of the spans' lengths of each line, the t of V S/(I t) [mm]."""
+        """Sum of the spans' lengths of each line, the t of V S/(I t), shape (L,) [mm]."""
         return np.bincount(self.span_line, self.span_length, minlength=len(self.levels)).astype(float)
 
     @property
     def span_first(self) -> IntArray:
-        """(S,) first interval of each span."""
+        """First interval of each span, shape (S,)."""
         return np.searchsorted(self.span, np.arange(len(self.span_line))).astype(np.int64)
 
     def point(self, line: IntArray, position: FloatArray) -> FloatArray:
-        """Return the place (..., 2) at a position (...) along a line (...) [mm]."""
+        """Return the place, shape (..., 2), at a position (...) along a line (...) [mm]."""
         return np.asarray(self.levels[line][..., None] * self.normal + position[..., None] * self.tangent)
 
     def parts_of_span(self, span: int) -> tuple[str, ...]:
@@ -169,7 +172,7 @@ class Crossings:
 
 
 def line_crossings(curves: EdgeCurves, normal: FloatArray, levels: FloatArray) -> Crossings:
-    """Lay lines n . x = level through the mesh.
+    """Lay lines n . x = level through the mesh, arrays of the shapes in Crossings.
 
     normal : (2,) unit direction. levels : (L,) ascending [mm]; ValueError when they are not.
     """
@@ -180,7 +183,7 @@ def line_crossings(curves: EdgeCurves, normal: FloatArray, levels: FloatArray) -
 
 
 def crossings_of(hits: EdgeHits) -> Crossings:
-    """Pair the hits of each triangle into intervals and chain the intervals into spans, arrays as in Crossings [mm]."""
+    """Pair the hits of each triangle into intervals and chain the intervals into spans, shapes as in Crossings [mm]."""
     edges, per_line = hits.curves.edges, len(hits.curves.mesh.triangles)
     owner, local = edges.triangles[hits.edge], edges.local[hits.edge]
     hit, side = np.nonzero(owner >= 0)

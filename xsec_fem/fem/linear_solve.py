@@ -45,7 +45,7 @@ class NeumannFactor:
         """Solve for nodal loads (N, k), with the sum (k,) of the magnitudes they were added up from, and a name a column.
 
         Returns the solutions (N, k), the largest relative load sum and the largest relative residual
-        |K u - b| / (|K| |u| + |b|) in the maximum norm, both dimensionless.
+        |K u - b| / (|K| |u| + |b|) in the maximum norm, both [-].
 
         Raises
         ------

@@ -15,7 +15,7 @@ _NEWTON_STEPS = 12  # quadratic convergence from the straight triangle's coordin
 
 
 def reference_coordinates(mesh: Mesh, elements: IntArray, points: FloatArray) -> FloatArray:
-    """Invert the map: points (m, 2), one in each given triangle (m,), to reference coordinates (m, 2).
+    """Invert the map: return the reference coordinates, shape (m, 2) [-], of points (m, 2) [mm], one in each given triangle (m,).
 
     Points outside come back with coordinates outside the reference triangle, NaN where the map has no inverse.
     """
@@ -38,9 +38,9 @@ def reference_coordinates(mesh: Mesh, elements: IntArray, points: FloatArray) ->
 
 
 def find_triangles(mesh: Mesh, point: tuple[float, float]) -> tuple[IntArray, FloatArray]:
-    """Return all triangles that hold the point (y, z) [mm], edges included, and its reference coordinates, (m,) and (m, 2).
+    """Return all triangles that hold the point (y, z) [mm], edges included, and its reference coordinates there [-].
 
-    Empty arrays when the point lies outside the section.
+    Shapes (m,) and (m, 2); empty arrays when the point lies outside the section.
     """
     target = np.asarray(point, float)
     low, high = mesh.boxes

@@ -50,16 +50,16 @@ class Batch:
 
     @property
     def weights(self) -> FloatArray:
-        """(m, Q) quadrature weights times det J: they sum to the area of each triangle [mm²]."""
+        """Quadrature weights times det J, shape (m, Q): they sum to the area of each triangle [mm²]."""
         return self.rule.weights * self.det
 
     @property
     def shape_values(self) -> FloatArray:
-        """(Q, n) basis functions at the rule's points."""
+        """Basis functions at the rule's points, shape (Q, n) [-]."""
         return self.element.values(self.rule.points)
 
     def flux(self, q: FloatArray) -> FloatArray:
-        """Return adj(J) q for vectors q of shape (m, Q, k, 2), same shape."""
+        """Return adj(J) q for vectors q of shape (m, Q, k, 2), same shape [mm times the unit of q]."""
         j = self.jacobian[:, :, None]
         result = by_component(q.shape[:-1])
         result[..., 0] = j[..., 1, 1] * q[..., 0] - j[..., 0, 1] * q[..., 1]
@@ -67,7 +67,7 @@ class Batch:
         return result
 
     def gradients(self, u: FloatArray) -> FloatArray:
-        """Return the gradients at the rule's points, shape (m, Q, k, 2), of nodal values u of shape (N, k)."""
+        """Return the gradients at the rule's points, shape (m, Q, k, 2), of nodal values u of shape (N, k) [unit of u per mm]."""
         return physical_gradients(self.element, self.rule.points, u[self.nodes], self.jacobian, self.det)
 
 
@@ -79,7 +79,10 @@ def by_component(shape: tuple[int, ...]) -> FloatArray:
 def physical_gradients(
     element: LagrangeTriangle, points: FloatArray, u: FloatArray, jacobian: FloatArray, det: FloatArray
 ) -> FloatArray:
-    """Return J^-T (reference gradient): u (m, n, k) at reference points (Q, 2) -> (m, Q, k, 2)."""
+    """Return J^-T (reference gradient) at reference points (Q, 2), shape (m, Q, k, 2) [unit of u per mm].
+
+    u : (m, n, k) nodal values. jacobian : (m, Q or 1, 2, 2) [mm] and det : (m, Q or 1) [mm²], as in Batch.
+    """
     table = element.gradients(points).transpose(0, 2, 1).reshape(-1, u.shape[1])  # (2Q, n)
     reference = (table @ u).reshape(len(u), len(points), 2, u.shape[2])
     inverse = (jacobian / det[..., None, None])[:, :, None]
@@ -93,10 +96,10 @@ def physical_gradients(
 def map_points(
     mesh: Mesh, elements: IntArray, points: FloatArray, straight: bool
 ) -> tuple[FloatArray, FloatArray, FloatArray]:
-    """Map reference points (Q, 2) into the given triangles.
+    """Map reference points (Q, 2) into the given triangles (m,).
 
-    Returns positions (m, Q, 2), Jacobians (m, Q or 1, 2, 2) and determinants (m, Q or 1); `straight` promises that the
-    triangles' sides are straight, and then Q is 1 in the last two.
+    Returns positions of shape (m, Q, 2) [mm], Jacobians (m, Q or 1, 2, 2) [mm] and determinants (m, Q or 1) [mm²]; `straight`
+    promises that the triangles' sides are straight, and then Q is 1 in the last two.
     """
     x = mesh.nodes[mesh.triangles[elements]]
     if straight:

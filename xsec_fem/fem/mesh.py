@@ -60,7 +60,7 @@ class Mesh:
     ) -> Mesh:
         """Make a mesh from raw arrays: unused nodes are dropped, clockwise triangles are turned round.
 
-        Shapes as in the class; raises MeshingError like the constructor.
+        Shapes as in the class (a third coordinate of the nodes is left out) [mm]; raises MeshingError like the constructor.
         """
         nodes, triangles = np.asarray(nodes, float)[:, :2], np.asarray(triangles, np.int64)
         corner = nodes[triangles[:, :3]]
@@ -119,7 +119,7 @@ class Mesh:
 
     @cached_property
     def curved(self) -> npt.NDArray[np.bool_]:
-        """(M,) True for triangles with a curved side (or unevenly spaced side nodes)."""
+        """True for triangles with a curved side (or unevenly spaced side nodes), shape (M,)."""
         corner = self.nodes[self.triangles[:, :3]]
         straight = lagrange_triangle(1).values(self.element.nodes)
         size = np.linalg.norm(corner[:, 1] - corner[:, 0], axis=1) + np.linalg.norm(corner[:, 2] - corner[:, 0], axis=1)
@@ -129,7 +129,10 @@ class Mesh:
 
     @cached_property
     def worst_jacobian(self) -> FloatArray:
-        """(M,) smallest det J over the mean of |det J| of the same triangle, at its nodes and Gauss points; 1 when straight."""
+        """Smallest det J over the mean of |det J| of the same triangle, at its nodes and Gauss points, shape (M,) [-].
+
+        1 for straight triangles, -1 for clockwise and 0 for flat ones.
+        """
         points = np.vstack([self.element.nodes, triangle_rule(4 * self.order - 2).points])
         corner = self.nodes[self.triangles[:, :3]]
         side1, side2 = corner[:, 1] - corner[:, 0], corner[:, 2] - corner[:, 0]
@@ -146,12 +149,15 @@ class Mesh:
 
     @cached_property
     def boxes(self) -> tuple[FloatArray, FloatArray]:
-        """Lowest and highest coordinates of each triangle's nodes, (M, 2) each [mm]."""
+        """Lowest and highest coordinates of each triangle's nodes, shape (M, 2) each [mm]."""
         x = self.nodes[self.triangles]
         return x.min(axis=1), x.max(axis=1)
 
     def with_nodes(self, nodes: FloatArray) -> Mesh:
-        """Return the same mesh with moved nodes, shape (N, 2); used to shift and turn meshes in tests and tools."""
+        """Return the same mesh with moved nodes, shape (N, 2) [mm]; used to shift and turn meshes in tests and tools.
+
+        Raises MeshingError like the constructor.
+        """
         return replace(self, nodes=nodes)
 
 

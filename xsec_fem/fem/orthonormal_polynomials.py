@@ -45,10 +45,10 @@ def _jacobi(degree: int, a: int, s: FloatArray) -> list[FloatArray]:
 
 
 def orthonormal_polynomials(degree: int, points: FloatArray) -> tuple[FloatArray, FloatArray]:
-    """Return values (Q, n) and gradients (Q, n, 2) at reference points (Q, 2), n = (degree + 1)(degree + 2)/2.
+    """Return values, shape (Q, n), and gradients, shape (Q, n, 2) [-], at reference points (Q, 2), n = (degree + 1)(degree + 2)/2.
 
     Sorted by total degree, so that the first n' are the basis of any lower degree; the first is the constant sqrt 2.
-    Dimensionless. Source: Proriol 1957, Koornwinder 1975 (module docstring).
+    Source: Proriol 1957, Koornwinder 1975 (module docstring).
     """
     xi, eta = np.asarray(points, float).T
     one, zero = np.ones_like(xi), np.zeros_like(xi)

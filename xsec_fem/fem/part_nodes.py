@@ -36,7 +36,7 @@ class PartNodes:
 
     @classmethod
     def of(cls, mesh: Mesh) -> PartNodes:
-        """Number the pairs of a mesh, sorted by part, then node."""
+        """Number the pairs of a mesh, sorted by part, then node; arrays of the shapes in the class, (S,) and (M, n)."""
         size = len(mesh.nodes)
         keys = mesh.triangles + size * mesh.part_of[:, None]
         pairs, triangles = np.unique(keys, return_inverse=True)
@@ -44,7 +44,7 @@ class PartNodes:
 
     @cached_property
     def positions(self) -> FloatArray:
-        """(S, 2) coordinates in the file's axes [mm]."""
+        """Coordinates of the pairs in the file's axes, shape (S, 2) [mm]."""
         return self.mesh.nodes[self.node]
 
     @cached_property
@@ -53,7 +53,10 @@ class PartNodes:
         return np.bincount(self.triangles.ravel(), minlength=len(self.node)).astype(float)
 
     def mean_gradients(self, u: FloatArray) -> FloatArray:
-        """Return gradients of nodal functions u (N, k): shape (S, k, 2), the mean over the part's triangles at each node."""
+        """Return gradients of nodal functions u (N, k), shape (S, k, 2) [unit of u per mm].
+
+        The value at a node is the mean over the triangles of its part there.
+        """
         mesh, count = self.mesh, u.shape[1]
         total = np.zeros((len(self.node), count, 2))
         for straight in (True, False):

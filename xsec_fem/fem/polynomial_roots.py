@@ -20,12 +20,12 @@ def evaluate(coefficients: FloatArray, u: FloatArray) -> FloatArray:
 
 
 def derivative(coefficients: FloatArray) -> FloatArray:
-    """Return the coefficients (K, n - 1) of the derivatives of polynomials (K, n), lowest first."""
+    """Return the coefficients of the derivatives of polynomials (K, n), lowest first, shape (K, n - 1)."""
     return np.asarray(coefficients[:, 1:] * np.arange(1, coefficients.shape[1]))
 
 
 def bracketed_roots(coefficients: FloatArray, low: FloatArray, high: FloatArray) -> FloatArray:
-    """Return a root in [low, high] of each polynomial (K, n); low, high and the result (K,) or (K, m).
+    """Return a root in [low, high] of each polynomial (K, n); low, high and the result have the shape (K,) or (K, m).
 
     Newton's steps inside a bracket that shrinks with every sign, halved when a step leaves it. Without a change of sign: `high`.
     """

@@ -54,7 +54,7 @@ def _gauss(n: int) -> tuple[FloatArray, FloatArray]:
 
 @lru_cache
 def interval_rule(degree: int) -> Rule:
-    """Return a Gauss rule on [0, 1], points (Q, 1), exact for polynomials of that degree."""
+    """Return a Gauss rule on [0, 1], points of shape (Q, 1) [-], exact for polynomials of that degree."""
     n = degree // 2 + 1
     x, w = _gauss(n)
     return Rule(x[:, None], w, 2 * n - 1)
@@ -75,7 +75,10 @@ def _symmetric_rule(degree: int) -> Rule:
 
 @lru_cache
 def triangle_rule(degree: int) -> Rule:
-    """Return a rule on the reference triangle (area 1/2), points (Q, 2), exact for polynomials of that degree."""
+    """Return a rule on the reference triangle (area 1/2), points of shape (Q, 2) [-], exact for polynomials of that degree.
+
+    Source: Dunavant 1985 up to degree 8, Stroud 1971 above.
+    """
     for known in _SYMMETRIC:
         if degree <= known:
             return _symmetric_rule(known)

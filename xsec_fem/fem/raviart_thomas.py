@@ -53,18 +53,18 @@ class RaviartThomas:
 
     @cached_property
     def flux_points(self) -> FloatArray:
-        """(3 (k+1), 2) Gauss points of the sides, walking counter-clockwise."""
+        """Gauss points of the sides, walking counter-clockwise, shape (ne, 2) [-], ne = `flux_count`."""
         s = interval_rule(2 * self.degree + 1).points
         return np.vstack([(1 - s) * _CORNERS[e] + s * _CORNERS[(e + 1) % 3] for e in range(3)])
 
     @cached_property
     def flux_weights(self) -> FloatArray:
-        """(3 (k+1),) Gauss weights of the sides; they sum to 1 on each."""
+        """Gauss weights of the sides, shape (ne,) [-]; they sum to 1 on each."""
         return np.tile(interval_rule(2 * self.degree + 1).weights, 3)
 
     @cached_property
     def side_normals(self) -> FloatArray:
-        """(3 (k+1), 2) outward normals at the flux points, as long as the side."""
+        """Outward normals at the flux points, as long as the side, shape (ne, 2) [-]."""
         side = np.roll(_CORNERS, -1, axis=0) - _CORNERS
         return np.repeat(np.column_stack([side[:, 1], -side[:, 0]]), self.degree + 1, axis=0)
 
@@ -103,12 +103,12 @@ class RaviartThomas:
         return inverse
 
     def values(self, points: FloatArray) -> FloatArray:
-        """Return the fields at points (Q, 2): shape (Q, n, 2)."""
+        """Return the fields at points (Q, 2): shape (Q, n, 2) [-]. Source: Raviart & Thomas 1977."""
         result: FloatArray = np.einsum("qsd,sn->qnd", self._span(points)[0], self._coefficients, optimize=True)
         return result
 
     def divergences(self, points: FloatArray) -> FloatArray:
-        """Return the divergences at points (Q, 2): shape (Q, n)."""
+        """Return the divergences at points (Q, 2): shape (Q, n) [-]. Source: Raviart & Thomas 1977."""
         result: FloatArray = self._span(points)[1] @ self._coefficients
         return result
 

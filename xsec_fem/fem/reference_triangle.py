@@ -22,7 +22,7 @@ def node_count(degree: int) -> int:
 
 
 def lattice(degree: int) -> IntArray:
-    """Return the nodes' positions times the degree, shape (n, 2), in the numbering of gmsh."""
+    """Return the nodes' positions times the degree, whole numbers, shape (n, 2) [-], in the numbering of gmsh."""
     if degree == 0:
         return np.zeros((1, 2), np.int64)
     corners = np.array([[0, 0], [degree, 0], [0, degree]])
@@ -33,7 +33,7 @@ def lattice(degree: int) -> IntArray:
 
 
 def reflected_numbering(degree: int) -> IntArray:
-    """Return the permutation (n,) that turns a triangle round: corners 0 2 1 instead of 0 1 2."""
+    """Return the permutation, shape (n,), that turns a triangle round: corners 0 2 1 instead of 0 1 2."""
     points = [tuple(p) for p in lattice(degree).tolist()]
     return np.array([points.index((z, y)) for y, z in points])
 
@@ -46,7 +46,7 @@ class LagrangeTriangle:
 
     @cached_property
     def nodes(self) -> FloatArray:
-        """(n, 2) node positions."""
+        """Node positions, shape (n, 2) [-]."""
         return lattice(self.degree) / self.degree
 
     @cached_property
@@ -61,14 +61,14 @@ class LagrangeTriangle:
         return inverse
 
     def values(self, points: FloatArray) -> FloatArray:
-        """Return the basis functions at the points (Q, 2): shape (Q, n)."""
+        """Return the basis functions at the points (Q, 2): shape (Q, n) [-]."""
         y, z = np.asarray(points, float).T[:, :, None]
         i, j = self._exponents.T[:, None, :]
         result: FloatArray = (y**i * z**j) @ self._coefficients
         return result
 
     def gradients(self, points: FloatArray) -> FloatArray:
-        """Return the derivatives with respect to the reference coordinates at the points (Q, 2): shape (Q, n, 2)."""
+        """Return the derivatives with respect to the reference coordinates at the points (Q, 2): shape (Q, n, 2) [-]."""
         y, z = np.asarray(points, float).T[:, :, None]
         i, j = self._exponents.T[:, None, :]
         by_y = i * y ** np.maximum(i - 1, 0) * z**j

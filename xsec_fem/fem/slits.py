@@ -22,7 +22,7 @@ IntArray = npt.NDArray[np.int64]
 
 
 def open_slits(mesh: Mesh, edges: Edges, slit: IntArray) -> Mesh:
-    """Return the mesh with the given edges (K,) opened; nodes (N', 2) with N' >= N, same triangles, parts and places.
+    """Return the mesh with the given edges (K,) opened: nodes of shape (N', 2) with N' >= N, same triangles, parts and places [mm].
 
     Edge numbers are those of `edges`; free edges among them change nothing.
     """
@@ -43,7 +43,7 @@ def open_slits(mesh: Mesh, edges: Edges, slit: IntArray) -> Mesh:
 
 
 def facing_edges(mesh: Mesh, edges: Edges) -> IntArray:
-    """Return the pairs (K, 2) of free edges that lie on each other, the two sides of a slit, the lower number first.
+    """Return the pairs of free edges that lie on each other, the two sides of a slit, the lower number first, shape (K, 2).
 
     Their nodes have the same coordinates to the last digit, as those of an opened slit do.
     """

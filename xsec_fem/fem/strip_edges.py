@@ -18,7 +18,7 @@ _ON_LINE = (
 
 
 def on_strip(points: FloatArray, strip: Strip, size: float) -> npt.NDArray[np.bool_]:
-    """Return True (K,) for points (K, 2) on the straight strip between two points; `size` of the section [mm]."""
+    """Return True, shape (K,), for points (K, 2) on the straight strip between two points; `size` of the section [mm]."""
     start, along = np.array(strip[0]), np.subtract(strip[1], strip[0])
     length = float(np.hypot(*along))
     y, z = (points - start).T
@@ -28,7 +28,7 @@ def on_strip(points: FloatArray, strip: Strip, size: float) -> npt.NDArray[np.bo
 
 
 def strip_edges(mesh: Mesh, edges: Edges, chosen: IntArray, strip: Strip) -> IntArray:
-    """Return those of the chosen edges (K,) whose middle lies on the straight strip between two points [mm]."""
+    """Return those of the chosen edges (K,) whose middle lies on the straight strip between two points [mm], shape (k,)."""
     middle = mesh.nodes[edges.corners[chosen]].mean(axis=1)
     found: IntArray = chosen[on_strip(middle, strip, float(np.ptp(mesh.nodes, axis=0).max()))]
     return found
