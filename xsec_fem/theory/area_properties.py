@@ -38,25 +38,25 @@ class AreaProperties:
 
     @property
     def EIyy(self) -> float:
-        """∫E z², bending about y [N mm²]."""
+        """∫E z², bending about y [N mm²]. Source: Timoshenko 1955 (module docstring)."""
         return float(self.EI[1, 1])
 
     @property
     def EIzz(self) -> float:
-        """∫E y², bending about z [N mm²]."""
+        """∫E y², bending about z [N mm²]. Source: Timoshenko 1955 (module docstring)."""
         return float(self.EI[0, 0])
 
     @property
     def EIyz(self) -> float:
-        """∫E y z, without a minus sign [N mm²]."""
+        """∫E y z, without a minus sign [N mm²]. Source: Timoshenko 1955 (module docstring)."""
         return float(self.EI[0, 1])
 
     @cached_property
     def principal(self) -> tuple[float, float, float]:
-        """Return (alpha_deg, EIu, EIv), EIu >= EIv.
+        """Return (alpha_deg, EIu, EIv), EIu >= EIv [deg, N mm², N mm²].
 
         alpha is the angle from y to the axis u about which bending is stiffest, counter-clockwise, in (-90, 90]; 0 when
-        both are equal to 1e-9.
+        both are equal to 1e-9. Source: Timoshenko 1955, appendix A.
         """
         half_sum, half_difference = (self.EIyy + self.EIzz) / 2, (self.EIyy - self.EIzz) / 2
         radius = float(np.hypot(half_difference, self.EIyz))
@@ -69,7 +69,7 @@ class AreaProperties:
 
 
 def area_properties(mesh: Mesh, moduli: Moduli) -> AreaProperties:
-    """Integrate over the mesh; moments in N mm² for a file in N and mm.
+    """Integrate over the mesh, arrays of shape (P,), (2,) and (2, 2) as in AreaProperties; moments in N mm² for a file in N and mm.
 
     Moments are taken about the mean of the nodes and then shifted by the small way to the centroid, so that nothing
     cancels. Source: module docstring (Timoshenko 1955).

@@ -38,7 +38,10 @@ class Sector:
         return self.end - self.start
 
     def mapped(self) -> tuple[float, float]:
-        """Return the angle after the map G^(-1/2) [rad] and g = sqrt(det G) [MPa]."""
+        """Return the angle after the map G^(-1/2) [rad] and g = sqrt(det G) [MPa].
+
+        Source: derived here, for a wedge as in Williams 1952 (module docstring).
+        """
         values, vectors = np.linalg.eigh(self.G)
         root = vectors @ np.diag(values**-0.5) @ vectors.T
 
@@ -118,7 +121,7 @@ class WedgeMode:
     sine: FloatArray
 
     def values(self, sector: int, angles: FloatArray) -> FloatArray:
-        """Return phi at angles (n,) measured from +y [rad] inside one sector, shape (n,). Source: Williams 1952."""
+        """Return phi [-] at angles (n,) measured from +y [rad] inside one sector, shape (n,). Source: Williams 1952."""
         b = self.lam * (angles - self.sectors[sector].start)
         result: FloatArray = self.cosine[sector] * np.cos(b) + self.sine[sector] * np.sin(b)
         return result

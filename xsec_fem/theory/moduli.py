@@ -11,7 +11,10 @@ FloatArray = npt.NDArray[np.float64]
 
 
 def rotated_tensor(first: float, second: float, degrees: float) -> FloatArray:
-    """Return R diag(first, second) Rᵀ, shape (2, 2), R the rotation by the grain angle (counter-clockwise)."""
+    """Return R diag(first, second) Rᵀ, shape (2, 2), R the rotation by the grain angle [deg], counter-clockwise.
+
+    The unit is that of the two values, MPa for shear moduli. Source: Sokolnikoff 1956 (change of axes of a tensor of second order).
+    """
     c, s = np.cos(np.radians(degrees)), np.sin(np.radians(degrees))
     turn = np.array([[c, -s], [s, c]])
     tensor: FloatArray = turn @ np.diag([first, second]) @ turn.T
@@ -48,12 +51,15 @@ class Moduli:
 
     @classmethod
     def isotropic(cls, E: float, nu: float, G: float | None = None) -> Moduli:
-        """Return the constants of one isotropic part; G is E/(2(1+nu)) when absent [MPa]."""
+        """Return the constants of one isotropic part, arrays of shape (1,) and (1, 2, 2); G is E/(2(1+nu)) when absent [MPa].
+
+        Raises ValueError when E or G is not positive. Source: Timoshenko & Goodier 1970 (E/(2(1+nu))).
+        """
         shear = E / (2 * (1 + nu)) if G is None else G
         return cls(np.array([E], float), shear * np.eye(2)[None], nu * np.eye(2)[None])
 
     def without_nu(self) -> Moduli:
-        """Return the same constants with nu = 0 in the in-plane terms."""
+        """Return the same constants with nu = 0 in the in-plane terms, arrays of the same shape."""
         return replace(self, nu=np.zeros_like(self.nu))
 
     @property

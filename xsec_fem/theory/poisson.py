@@ -22,7 +22,7 @@ FloatArray = npt.NDArray[np.float64]
 
 
 def poisson_term(nu: FloatArray, r: FloatArray, a: FloatArray) -> FloatArray:
-    """Return d at points of one batch: shape (m, Q, k, 2).
+    """Return d at points of one batch: shape (m, Q, k, 2) [1/N].
 
     nu : (m, 2, 2) tensor of each triangle's part [-].
     r : (m, Q, 2) position from the E-weighted centroid [mm].

@@ -36,7 +36,7 @@ class ShearStiffness:
     EIw : warping rigidity about the Trefftz shear centre [N mm⁴].
     shear_centre : (2,) zero mean twist [mm].
     trefftz_centre : (2,) uncoupled energies [mm].
-    flexibility : (3, 3) ∫ tau_i . G^-1 tau_j for unit Vy, Vz (zero mean twist fields) and unit T.
+    flexibility : (3, 3) ∫ tau_i . G^-1 tau_j for unit Vy, Vz (zero mean twist fields) and unit T [1/N, 1/(N mm), 1/(N mm²)].
     shear_flexibility : (2, 2) of forces through the Trefftz shear centre [1/N].
     """
 
@@ -49,7 +49,10 @@ class ShearStiffness:
 
 
 def shear_stiffness(area: AreaProperties, integrals: FieldIntegrals) -> ShearStiffness:
-    """Return the constants, (2,), (2, 2) and (3, 3) arrays as in ShearStiffness (N, mm). Source: module docstring."""
+    """Return the constants, (2,), (2, 2) and (3, 3) arrays as in ShearStiffness (N, mm).
+
+    Source: Trefftz 1935, Gruttmann & Wagner 2001, Vlasov 1961 (module docstring).
+    """
     energy, moment = integrals.energy, integrals.moment
     GIT = float(energy[TORSION, TORSION])
     torque = moment[SHEAR] + moment[POISSON]

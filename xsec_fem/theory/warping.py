@@ -33,7 +33,7 @@ PROBLEMS = ("torsion", "flexure by Vy", "flexure by Vz", "Poisson part of Vy", "
 
 
 def apply_tensor(tensor: FloatArray, vectors: FloatArray) -> FloatArray:
-    """Return tensor . vector for tensors (m, 2, 2), one a triangle, and vectors (m, Q, k, 2), same shape.
+    """Return tensor . vector for tensors (m, 2, 2), one a triangle, and vectors (m, Q, k, 2), same shape [product of their units].
 
     Written out by components: tiny matrix products are ten times slower.
     """
@@ -59,11 +59,11 @@ class WarpingProblem:
 
     @property
     def a(self) -> FloatArray:
-        """(2, 2) rows a for unit Vy and unit Vz."""
+        """Rows a = EI^-1 e for unit Vy and unit Vz, shape (2, 2) [1/(N mm²)]. Source: Sokolnikoff 1956, ch. 4."""
         return np.asarray(np.linalg.inv(self.area.EI), dtype=np.float64)
 
     def position(self, batch: Batch) -> FloatArray:
-        """(m, Q, 2) position of the batch's points from the centroid [mm]."""
+        """Return the position of the batch's points from the centroid, shape (m, Q, 2) [mm]."""
         result: FloatArray = batch.points - self.area.centroid
         return result
 
@@ -74,11 +74,14 @@ class WarpingProblem:
         return t
 
     def poisson_field(self, part: npt.NDArray[np.int64], r: FloatArray) -> FloatArray:
-        """Return -d of unit Vy and Vz for triangles of the parts (m,) at r (m, Q, 2) [mm]: (m, Q, 2, 2). Source: Love 1927."""
+        """Return -d of unit Vy and Vz, shape (m, Q, 2, 2) [1/N], for triangles of the parts (m,) at r (m, Q, 2) [mm].
+
+        Source: Love 1927.
+        """
         return -poisson_term(self.moduli.nu[part], r, self.a)
 
     def prescribed(self, part: npt.NDArray[np.int64], r: FloatArray) -> FloatArray:
-        """Return g of tau = G (grad u + g) for all problems: t for torsion, 0, and -d; shape (m, Q, 5, 2).
+        """Return g of tau = G (grad u + g) for all problems: t for torsion [mm], 0, and -d [1/N]; shape (m, Q, 5, 2).
 
         part : (m,) part index; r : (m, Q, 2) position from the centroid [mm]. Source: Sokolnikoff 1956, ch. 4.
         """
@@ -88,7 +91,7 @@ class WarpingProblem:
         return g
 
     def stress(self, batch_part: npt.NDArray[np.int64], strain: FloatArray) -> FloatArray:
-        """Return G strain for strains (m, Q, k, 2), same shape [MPa per unit action]."""
+        """Return G strain for strains (m, Q, k, 2), same shape [MPa per unit action]. Source: Sokolnikoff 1956, ch. 4."""
         return apply_tensor(self.moduli.G[batch_part], strain)
 
 
@@ -99,7 +102,7 @@ class Warping:
     Attributes
     ----------
     problem : what was solved.
-    functions : (N, 5) omega [mm²] and the flexure functions [1/N], E-weighted mean zero.
+    functions : (N, 5) omega [mm²] and the flexure functions [mm/N], E-weighted mean zero.
     load_sum : largest relative sum of a load (0 up to round-off).
     residual : largest relative residual of the linear solves.
     """
@@ -110,7 +113,10 @@ class Warping:
     residual: float
 
     def strains(self, batch: Batch) -> FloatArray:
-        """Return G^-1 tau of all five problems at the batch's points, shape (m, Q, 5, 2) [1 per unit action or twist]."""
+        """Return G^-1 tau of all five problems at the batch's points, shape (m, Q, 5, 2) [mm per unit twist, 1 per N].
+
+        Source: Sokolnikoff 1956, ch. 4.
+        """
         strain = batch.gradients(self.functions)
         r = self.problem.position(batch)
         strain[:, :, TORSION] += self.problem.twist_field(r)[:, :, 0]
@@ -118,12 +124,15 @@ class Warping:
         return strain
 
     def stresses(self, batch: Batch) -> FloatArray:
-        """Return tau of all five problems at the batch's points, shape (m, Q, 5, 2) [MPa per unit action or twist]."""
+        """Return tau of all five problems at the batch's points, shape (m, Q, 5, 2) [MPa per unit action or twist].
+
+        Source: Sokolnikoff 1956, ch. 4.
+        """
         return self.problem.stress(batch.part, self.strains(batch))
 
 
 def warping_loads(problem: WarpingProblem) -> tuple[FloatArray, FloatArray]:
-    """Return the consistent nodal loads of the five problems (N, 5), and the size of each before it cancels (5,).
+    """Return the consistent nodal loads of the five problems (N, 5) [N per unit twist, N/mm per N], and their sizes (5,).
 
     The size is the sum of the magnitudes of all element loads: on a circle the torsion load itself is zero up to round-off.
     Source: Sokolnikoff 1956, ch. 4.
@@ -148,7 +157,7 @@ def warping_loads(problem: WarpingProblem) -> tuple[FloatArray, FloatArray]:
 
 
 def factorise_warping(problem: WarpingProblem) -> NeumannFactor:
-    """Assemble and factorise the common matrix ∫G grad u . grad v, (N, N), pinned at the node nearest the centroid.
+    """Assemble and factorise the common matrix ∫G grad u . grad v, (N, N) [MPa], pinned at the node nearest the centroid.
 
     Raises SolveError when it is singular beyond the constants. Source: Sokolnikoff 1956, ch. 4.
     """
@@ -159,7 +168,7 @@ def factorise_warping(problem: WarpingProblem) -> NeumannFactor:
 
 
 def solve_warping(problem: WarpingProblem, factor: NeumannFactor) -> Warping:
-    """Solve the five problems with one factor; functions (N, 5) come back with E-weighted mean zero.
+    """Solve the five problems with one factor; functions (N, 5) [mm², mm/N] come back with E-weighted mean zero.
 
     Raises SolveError as NeumannFactor.solve does. Source: Sokolnikoff 1956, ch. 4.
     """
