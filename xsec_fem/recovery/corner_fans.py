@@ -20,7 +20,10 @@ _CORNERS = np.array([[0.0, 0.0], [1.0, 0.0], [0.0, 1.0]])
 
 
 def sector_directions(mesh: Mesh) -> tuple[FloatArray, FloatArray]:
-    """Return the direction of the leaving edge at each corner, and the angle to the arriving edge, in (0, 2 pi), (M, 3) [rad]."""
+    """Return the direction of the leaving edge at each corner, and the angle to the arriving edge, in (0, 2 pi) [rad].
+
+    Both have the shape (M, 3).
+    """
     gradients = mesh.element.gradients(_CORNERS)
     jacobian = np.einsum("cnr,mnd->mcdr", gradients, mesh.nodes[mesh.triangles])
     leaving = np.einsum("mcdr,cr->mcd", jacobian, _LEAVING)
@@ -52,7 +55,7 @@ def fan_round(mesh: Mesh, edges: Edges, first: int) -> Fan:
 def fan_sectors(
     mesh: Mesh, G: FloatArray, directions: tuple[FloatArray, FloatArray], fan: Fan
 ) -> tuple[tuple[Sector, ...], tuple[str, ...]]:
-    """Return the sectors of a fan, neighbours of equal G (P, 2, 2) [MPa] joined, and the names of the parts in it."""
+    """Return the sectors of a fan, neighbours of equal G (shape (P, 2, 2) [MPa]) joined, and the names of the parts in it."""
     start, angle = directions
     sectors: list[Sector] = []
     parts: list[str] = []

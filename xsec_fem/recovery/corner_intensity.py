@@ -29,6 +29,7 @@ def corner_intensities(warping: Warping, stiffness: ShearStiffness, corners: Seq
     """Return K of every corner under unit Vy, Vz and T, shape (C, 3) [MPa mm^-exponent per N, per N mm].
 
     NaN where a sector at the corner is not isotropic, or where a curved side leaves the circle's arc outside the section.
+    Source: derived here, on the modes of Williams 1952 (module docstring).
     """
     result = np.full((len(corners), 3), np.nan)
     for row, corner in enumerate(corners):

@@ -32,12 +32,12 @@ class Corner:
 
     Attributes
     ----------
-    y, z : place in the file's axes.
-    angle_deg : angle of the material around it.
-    exponent : stress exponent lambda - 1, negative.
+    y, z : place in the file's axes [mm].
+    angle_deg : angle of the material around it [deg].
+    exponent : stress exponent lambda - 1, negative [-].
     parts : names of the parts that meet there.
-    wall : thickness of the thinner adjoining wall, or the distance of the nearest other such corner when smaller.
-    distance : stresses nearer than this to the corner are not reported as stresses.
+    wall : thickness of the thinner adjoining wall, or the distance of the nearest other such corner when smaller [mm].
+    distance : stresses nearer than this to the corner are not reported as stresses [mm].
     sectors : the materials around it, counter-clockwise.
     part : index of the first part in the mesh.
     """
@@ -98,10 +98,10 @@ def _wall(place: FloatArray, directions: tuple[float, float], segments: FloatArr
 
 
 def find_corners(mesh: Mesh, edges: Edges, G: FloatArray, distance: float | None = None) -> tuple[Corner, ...]:
-    """Return the singular corners of the free boundary and of lines between materials, sorted by place; G (P, 2, 2) per part [MPa].
+    """Return the singular corners of the free boundary and of lines between materials, sorted by place.
 
-    `distance` [mm] is where stresses beside a corner are read; a tenth of the thinner adjoining wall when None.
-    Source of the exponents: xsec_fem.theory.corner_exponent.
+    G : shear moduli of the parts, shape (P, 2, 2) [MPa]. `distance` [mm] is where stresses beside a corner are read; a tenth
+    of the thinner adjoining wall when None. Source of the exponents: Williams 1952 (xsec_fem.theory.corner_exponent).
     """
     directions = sector_directions(mesh)
     found = [*_free_corners(mesh, edges, G, directions), *_inner_corners(mesh, edges, G, directions)]

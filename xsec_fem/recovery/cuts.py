@@ -54,22 +54,22 @@ class CutReadings:
 
     @property
     def across(self) -> FloatArray:
-        """(I, Q) tau . n [MPa]."""
+        """Stress across the line, tau . n, shape (I, Q) [MPa]."""
         return np.asarray(self.tau @ self.crossings.normal)
 
     @property
     def along(self) -> FloatArray:
-        """(I, Q) tau along the line [MPa]."""
+        """Stress along the line, tau . t, shape (I, Q) [MPa]."""
         return np.asarray(self.tau @ self.crossings.tangent)
 
     @property
     def size(self) -> FloatArray:
-        """(I, Q) |tau| [MPa]."""
+        """Magnitude |tau|, shape (I, Q) [MPa]."""
         return np.asarray(np.hypot(self.tau[..., 0], self.tau[..., 1]))
 
 
 def read_cuts(solved: SolvedFields, crossings: Crossings, forces: SectionForces) -> CutReadings:
-    """Read the recovered nodal field along lines, arrays (I, Q, ...) as in CutReadings [MPa, mm]."""
+    """Read the recovered nodal field along lines, arrays of shape (I, Q, ...) as in CutReadings [MPa, mm]."""
     shares = np.linspace(0.0, 1.0, _SAMPLES)
     numbering = solved.fields.part_nodes.triangles
     tau = sample_values(crossings, shares, solved.fields.combine(forces).tau_components, numbering)
@@ -152,7 +152,7 @@ class CutResult:
 
     @property
     def peak_at(self) -> Point:
-        """Where it is [mm]."""
+        """Where it is, shape (2,) [mm]."""
         return self.worst.peak_at
 
 
@@ -216,7 +216,7 @@ def _pair(place: FloatArray) -> str:
 
 
 def cut_result(solved: SolvedFields, placed: PlacedCut, forces: SectionForces) -> CutResult:
-    """Evaluate a placed cut under the given forces [N, N mm -> N/mm, MPa]."""
+    """Evaluate a placed cut under the given forces, profiles of shape (K,) as in SpanResult [N, N mm -> N/mm, MPa]."""
     flows = unit_flows(solved, placed.crossings) @ as_unit(forces)
     readings = read_cuts(solved, placed.crossings, forces)
     spans = tuple(_span_result(readings, int(span), float(flows[span])) for span in placed.spans)

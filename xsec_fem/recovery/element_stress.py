@@ -24,12 +24,12 @@ _BATCH = 4096  # triangles at a time, to bound memory
 
 
 def element_stress(warping: Warping, stiffness: ShearStiffness) -> FloatArray:
-    """Return tau of unit Vy, Vz and T from the warping functions, shape (M, n, 3, 2) [1/mm², 1/mm³]."""
+    """Return tau of unit Vy, Vz and T from the warping functions, shape (M, n, 3, 2) [MPa per N, MPa per N mm]."""
     return _at_nodes(warping.problem.mesh, warping.stresses, stiffness.GIT)
 
 
 def equilibrated_stress(flux: EquilibratedFlux, stiffness: ShearStiffness) -> FloatArray:
-    """Return the equilibrated field of unit Vy, Vz and T, shape (M, n, 3, 2) [1/mm², 1/mm³].
+    """Return the equilibrated field of unit Vy, Vz and T, shape (M, n, 3, 2) [MPa per N, MPa per N mm].
 
     `flux` has the five columns of xsec_fem.theory.warping.PROBLEMS.
     """

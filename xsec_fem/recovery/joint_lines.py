@@ -34,7 +34,7 @@ class BondLine:
     edges : (K,) edges of the mesh between the joint's first side and the rest that belong to it.
     width : over which the flow is spread: length of a glue line or strip, throat of a bead [mm].
     places : (S, 2) where the stress across is read [mm].
-    across : (S, 3) tau . n there for unit Vy, Vz and T, n from the first side to the second.
+    across : (S, 3) tau . n there for unit Vy, Vz and T [MPa per N, MPa per N mm], n from the first side to the second.
     root_distance : from the root of a bead to the first of these places [mm]; 0 for others.
     """
 
@@ -50,9 +50,10 @@ class BondLine:
 def bond_lines(
     joint: Joint, fields: UnitFields, edges: Edges, inside: npt.NDArray[np.bool_], corners: Sequence[Corner]
 ) -> list[BondLine]:
-    """Return the bonds of a joint; `inside` (M,) marks its first side. None for contact.
+    """Return the bonds of a joint, arrays of the shapes in BondLine [mm]; none for contact, which has no bonds.
 
-    Raises ValueError when its sides share no edge, or when faying faces that should be a slit are bonded in the mesh.
+    `inside` (M,) marks the triangles of its first side. Raises ValueError when its sides share no edge, or when faying faces
+    that should be a slit are bonded in the mesh.
     """
     mesh = fields.part_nodes.mesh
     faying = edges_between(mesh, edges, joint.first, joint.second)

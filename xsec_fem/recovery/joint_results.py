@@ -103,12 +103,12 @@ class JointResult:
 
     @property
     def utilisation(self) -> float | None:
-        """Demand over capacity; None without either."""
+        """Demand over capacity [-]; None without either."""
         return None if self.capacity is None or self.demand is None else self.demand / self.capacity
 
     @property
     def margin(self) -> float | None:
-        """1/utilisation - 1; None without a utilisation, or at no load."""
+        """1/utilisation - 1 [-]; None without a utilisation, or at no load."""
         return 1 / self.utilisation - 1 if self.utilisation else None
 
     def to_dict(self) -> dict[str, Any]:

@@ -39,7 +39,7 @@ class CutOff:
     Attributes
     ----------
     flows : (B, 3) flow of each bond [N/mm per N, per N mm].
-    separated : (3,) -∫_A E f of the material cut off: "V S/I".
+    separated : (3,) -∫_A E f of the material cut off: "V S/I" [N/mm per N, per N mm].
     shared_with : other joints and contacts among which V S/I is shared; empty when the joint separates the section.
     """
 
@@ -69,13 +69,13 @@ class JointFlows:
 
     @property
     def flow(self) -> FloatArray:
-        """(3,) flow of the whole joint [N/mm per N, per N mm]."""
+        """Flow of the whole joint under unit Vy, Vz and T, shape (3,) [N/mm per N, per N mm]."""
         total: FloatArray = self.cuts[0].flows.sum(axis=0)
         return total
 
     @property
     def separated(self) -> FloatArray:
-        """(3,) V S/I of what is cut off [N/mm per N, per N mm]."""
+        """V S/I of what is cut off, shape (3,) [N/mm per N, per N mm]."""
         return self.cuts[0].separated
 
     @property
@@ -89,7 +89,10 @@ class JointFlows:
         return not self.shared_with
 
     def cut_for(self, unit: FloatArray) -> CutOff:
-        """Return the cut whose V S/I under the forces (3,) is the larger: the one a hand calculation would make."""
+        """Return the cut whose V S/I under the forces, shape (3,) [N, N mm], is the larger.
+
+        It is the one a hand calculation would make.
+        """
         return max(self.cuts, key=lambda cut: abs(float(cut.separated @ unit)))
 
 
@@ -99,8 +102,8 @@ class ElementForces:
 
     Attributes
     ----------
-    nodal : (M, n, 5) ∫ (tau . grad v_i - E f v_i) over the triangle.
-    supply : (M, 5) -∫ E f over it.
+    nodal : (M, n, 5) ∫ (tau . grad v_i - E f v_i) over the triangle [N per unit twist, N/mm per N].
+    supply : (M, 5) -∫ E f over it [N per unit twist, N/mm per N].
     """
 
     nodal: FloatArray
@@ -108,8 +111,10 @@ class ElementForces:
 
 
 def element_forces(warping: Warping) -> ElementForces:
-    """Integrate over every triangle once, (M, n, 5) and (M, 5) [N per unit action or twist]. Source: weak form of
-    xsec_fem.theory.warping."""
+    """Integrate over every triangle once, shapes (M, n, 5) and (M, 5) [N per unit twist, N/mm per N].
+
+    Source: weak form of xsec_fem.theory.warping (Sokolnikoff 1956).
+    """
     problem = warping.problem
     count = warping.functions.shape[1]
     nodal, supply = np.zeros((*problem.mesh.triangles.shape, count)), np.zeros((len(problem.mesh.triangles), count))
@@ -129,7 +134,7 @@ def joint_flows(
     edges: Edges,
     corners: Sequence[Corner] = (),
 ) -> list[JointFlows]:
-    """Return the flows of all joints under unit actions, (B, 3) arrays [N/mm per N, per N mm].
+    """Return the flows of all joints under unit actions, arrays of shape (B, 3) [N/mm per N, per N mm].
 
     Stresses of welds are read outside the stated distance of `corners`. Raises ValueError when the mesh does not fit a joint:
     its sides share no edge, or a slit is not open.

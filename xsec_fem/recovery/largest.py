@@ -80,7 +80,7 @@ class Readings:
         return np.asarray(np.sqrt(shear if what == "tau" else self.sigma_x**2 + 3 * shear))
 
     def chosen(self, which: BoolArray) -> Readings:
-        """Return the readings where the mask (K,) is True."""
+        """Return the readings where the mask is True, arrays of shape (k, ...) as in the class [mm, MPa]."""
         return Readings(self.places[which], self.part[which], self.tau[which], self.sigma_x[which])
 
     def at(self, index: int, value: float, part_names: Sequence[str], corners: Sequence[Corner]) -> Largest:
@@ -92,7 +92,10 @@ class Readings:
 
 
 def corner_rings(mesh: Mesh, corners: Sequence[Corner]) -> Samples:
-    """Return the points inside the material on the circles of the stated distance round all singular corners."""
+    """Return the points inside the material on the circles of the stated distance round all singular corners [mm].
+
+    Arrays have the shapes in Samples.
+    """
     elements, values, places, owner = [], [], [], []
     for number, corner in enumerate(corners):
         first, last = corner.directions
@@ -115,7 +118,8 @@ def largest_by_part(
 ) -> tuple[Largest, ...]:
     """Return the largest |tau| or equivalent stress in each part, in the mesh's order of parts [MPa].
 
-    `rings` are the points of `corner_rings`. A part that lies within the corners' distances altogether is read at its nodes.
+    `rings` are the points of `corner_rings`, shapes as in Samples. A part that lies within the corners' distances altogether is
+    read at its nodes.
     """
     numbering = field.part_nodes
     nodes = Readings(numbering.positions, numbering.part, field.tau_components, field.sigma_x)
@@ -136,7 +140,10 @@ def largest_by_part(
 
 
 def read_beside_corners(field: StressField, rings: Samples, count: int) -> FloatArray:
-    """Return the largest |tau| on the circle round each of the `count` corners, (count,) [MPa]; NaN where no point lies inside."""
+    """Return the largest |tau| on the circle round each of the `count` corners, shape (count,) [MPa].
+
+    NaN where no point lies inside.
+    """
     tau = _read(field, rings).measure("tau")
     largest = np.full(count, -np.inf)
     np.maximum.at(largest, rings.corner, tau)

@@ -29,7 +29,10 @@ class Centres(Protocol):
 
 
 def load_point(actions: Actions, centres: Centres) -> tuple[float, float]:
-    """Return the point (y, z) through which Vy and Vz act [mm]; the shear centre when the user did not say."""
+    """Return the point (y, z) through which Vy and Vz act [mm]; the shear centre when the user did not say.
+
+    Raises ValueError for any other words than "shear centre" and "centroid".
+    """
     if actions.load_point is None or actions.load_point == "shear centre":
         return centres.ysc, centres.zsc
     if actions.load_point == "centroid":
@@ -43,7 +46,7 @@ def load_point(actions: Actions, centres: Centres) -> tuple[float, float]:
 def reduce_actions(actions: Actions, centres: Centres) -> SectionForces:
     """Return the forces at the shear centre of zero mean twist [N, N mm].
 
-    T_total = T + Vz (y - ysc) - Vy (z - zsc), with (y, z) the load point.
+    T_total = T + Vz (y - ysc) - Vy (z - zsc), with (y, z) the load point. Raises ValueError as `load_point` does.
     """
     y, z = load_point(actions, centres)
     torque = actions.T + actions.Vz * (y - centres.ysc) - actions.Vy * (z - centres.zsc)

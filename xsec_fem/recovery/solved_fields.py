@@ -49,27 +49,30 @@ class SolvedFields:
 
     @property
     def area(self) -> AreaProperties:
-        """Centroid and EI."""
+        """Centroid [mm] and EI, shape (2, 2) [N mm²]."""
         return self.warping.problem.area
 
     @property
     def E(self) -> FloatArray:
-        """(P,) modulus of each part [MPa]."""
+        """Modulus of each part, shape (P,) [MPa]."""
         return self.warping.problem.moduli.E
 
     @cached_property
     def curves(self) -> EdgeCurves:
-        """The edges as curves."""
+        """The edges as curves, arrays of the shapes in EdgeCurves [mm]."""
         return EdgeCurves(self.mesh, self.edges)
 
     @cached_property
     def element_tau(self) -> FloatArray:
-        """(M, n, 3, 2) the field whose flow is measured [1/mm², 1/mm³]."""
+        """The field whose flow is measured, shape (M, n, 3, 2) [MPa per N, MPa per N mm]."""
         return element_stress(self.warping, self.stiffness) if self.flow_field is None else self.flow_field
 
     @cached_property
     def plain(self) -> UnitFields:
-        """Nodal fields without the Poisson effect (nu = 0), from the same solution: its Poisson parts are left out."""
+        """Nodal fields without the Poisson effect (nu = 0), arrays of the shapes in UnitFields [MPa per N, MPa per N mm].
+
+        They come from the same solution: its Poisson parts are left out.
+        """
         functions = self.warping.functions.copy()
         functions[:, POISSON] = 0.0
         problem = replace(self.warping.problem, moduli=self.warping.problem.moduli.without_nu())

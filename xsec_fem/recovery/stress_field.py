@@ -69,22 +69,22 @@ class StressField:
 
     @property
     def tau_xy(self) -> FloatArray:
-        """(S,) shear stress along y [MPa]."""
+        """Shear stress along y, shape (S,) [MPa]."""
         return self.tau_components[:, 0]
 
     @property
     def tau_xz(self) -> FloatArray:
-        """(S,) shear stress along z [MPa]."""
+        """Shear stress along z, shape (S,) [MPa]."""
         return self.tau_components[:, 1]
 
     @cached_property
     def tau(self) -> FloatArray:
-        """(S,) magnitude of the shear stress [MPa]."""
+        """Magnitude of the shear stress, shape (S,) [MPa]."""
         return np.asarray(np.hypot(self.tau_xy, self.tau_xz))
 
     @cached_property
     def von_mises(self) -> FloatArray:
-        """(S,) equivalent stress sqrt(sigma² + 3 tau²) [MPa] (R. von Mises, 1913)."""
+        """Equivalent stress sqrt(sigma² + 3 tau²), shape (S,) [MPa] (R. von Mises, 1913)."""
         return np.asarray(np.sqrt(self.sigma_x**2 + 3 * self.tau**2))
 
     def at(self, y: float, z: float) -> tuple[PointStress, ...]:
@@ -114,8 +114,8 @@ class UnitFields:
     Attributes
     ----------
     part_nodes : the numbering; S values.
-    tau : (S, 3, 2) of unit Vy and Vz through the shear centre of zero mean twist, and of unit T [1/mm², 1/mm³].
-    sigma : (S, 3) of unit N, My and Mz.
+    tau : (S, 3, 2) of unit Vy and Vz through the shear centre of zero mean twist, and of unit T [MPa per N, MPa per N mm].
+    sigma : (S, 3) of unit N, My and Mz [MPa per N, MPa per N mm].
     """
 
     part_nodes: PartNodes
@@ -123,16 +123,17 @@ class UnitFields:
     sigma: FloatArray
 
     def combine(self, forces: SectionForces) -> StressField:
-        """Return the stresses under the given forces (arrays of S values) [MPa]."""
+        """Return the stresses under the given forces, arrays of shape (S,) and (S, 2) as in StressField [MPa]."""
         tau = np.einsum("skd,k->sd", self.tau, np.array([forces.Vy, forces.Vz, forces.T]))
         sigma = self.sigma @ np.array([forces.N, forces.My, forces.Mz])
         return StressField(self.part_nodes, tau, sigma)
 
 
 def unit_fields(warping: Warping, stiffness: ShearStiffness) -> UnitFields:
-    """Recover the nodal fields of unit actions from the solved warping functions, (S, 3, 2) and (S, 3).
+    """Recover the nodal fields of unit actions from the solved warping functions, shapes (S, 3, 2) and (S, 3).
 
-    tau is the mean over the triangles of the part at a node; sigma_x is exact. Source: xsec_fem.theory.warping, stiffness.
+    In MPa per N and MPa per N mm. tau is the mean over the triangles of the part at a node; sigma_x is exact.
+    Source: xsec_fem.theory.warping (Sokolnikoff 1956).
     """
     problem = warping.problem
     part_nodes = PartNodes.of(problem.mesh)
