@@ -52,7 +52,7 @@ class Difference:
 
     @property
     def ratio(self) -> float:
-        """Elasticity over elementary; infinite when the formula gives 0."""
+        """Elasticity over elementary [-]; infinite when the formula gives 0."""
         return self.elasticity / self.elementary if self.elementary else float("inf")
 
 
@@ -140,7 +140,7 @@ def _extremes(
 
 
 def ratio_field(solved: SolvedFields, forces: SectionForces, small: float = Limits.small) -> FloatArray:
-    """Return elasticity/elementary at every node, shape (S,), numbered as the nodal fields, for a map.
+    """Return elasticity/elementary at every node, shape (S,) [-], numbered as the nodal fields, for a map.
 
     |tau| over |q/t| of the whole cut perpendicular to V through the node; NaN where |tau| is below `small` times its largest.
     Where the thickness jumps, a node takes the cut of its own part's side. Raises ValueError without a shear force.

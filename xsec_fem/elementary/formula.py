@@ -71,14 +71,14 @@ class HandCalculation:
 
     @property
     def q(self) -> float:
-        """Flow through the cut [N/mm]. Source: module docstring."""
+        """Flow through the cut [N/mm]. Source: Timoshenko 1955, for both axes derived here (module docstring)."""
         about_y = self.Vz * self.Izz - self.Vy * self.Iyz
         about_z = self.Vy * self.Iyy - self.Vz * self.Iyz
         return -(about_y * self.Sy + about_z * self.Sz) / (self.Iyy * self.Izz - self.Iyz**2)
 
     @property
     def tau(self) -> float:
-        """q/t, the mean over the cut [MPa]."""
+        """q/t, the mean over the cut [MPa]. Source: Timoshenko 1955 (module docstring)."""
         return self.q / self.t
 
     @property
@@ -116,7 +116,7 @@ class HandValue:
 
 
 def shear_gradient(solved: SolvedFields, forces: SectionForces) -> FloatArray:
-    """Return a = EI^-1 V, shape (2,): d sigma_x/dx = E a . r [1/mm²]. Source: module docstring."""
+    """Return a = EI^-1 V, shape (2,) [1/mm²]: d sigma_x/dx = E a . r [MPa/mm]. Source: module docstring."""
     result: FloatArray = np.linalg.solve(solved.area.EI, np.array([forces.Vy, forces.Vz]))
     return result
 
@@ -148,7 +148,7 @@ def level_formula(solved: SolvedFields, forces: SectionForces, normal: FloatArra
 def hand_calculation(
     solved: SolvedFields, crossings: Crossings, spans: IntArray, moments: FloatArray, forces: SectionForces
 ) -> HandCalculation:
-    """Return the calculation for spans (n,) of one line that cut off moments (∫E, ∫E y, ∫E z) (3,) [N, mm, MPa]."""
+    """Return the calculation for spans (n,) of one line that cut off moments (∫E, ∫E y, ∫E z), shape (3,) [N, mm, MPa]."""
     E_ref = reference_modulus(solved)
     line = crossings.span_line[spans[0]]
     start, end = (
@@ -166,7 +166,10 @@ def hand_calculation(
 
 
 def hand_value(solved: SolvedFields, crossings: Crossings, spans: IntArray, forces: SectionForces) -> HandValue:
-    """Return the hand value of a cut across spans (n,) of one line; None with its reason where it does not separate the section."""
+    """Return the hand value of a cut across spans (n,) of one line [N, mm, MPa].
+
+    It is None with its reason where the cut does not separate the section.
+    """
     cut = np.zeros(len(spans), np.int64)
     moments, separates = cut_off_moments(crossings, spans, cut, solved.E, solved.area.centroid)
     if not separates[0]:

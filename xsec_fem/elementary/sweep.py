@@ -36,7 +36,7 @@ class Sweep:
     ----------
     name : "perpendicular to V", "along y" or "along z": the direction of the cuts.
     crossings : the cuts; levels (L,), t (L,) and spans are its own.
-    moments : (L, 3) ∫E, ∫E y, ∫E z below each level, about the centroid.
+    moments : (L, 3) ∫E, ∫E y, ∫E z below each level, about the centroid [N, N mm].
     elementary : (L,) q/t by the formula [MPa].
     mean : (L,) flow of the field over t [MPa].
     readings : the recovered field along the cuts.
@@ -53,39 +53,39 @@ class Sweep:
 
     @property
     def levels(self) -> FloatArray:
-        """(L,) n . x of the cuts [mm]."""
+        """n . x of the cuts, shape (L,) [mm]."""
         return self.crossings.levels
 
     @property
     def t(self) -> FloatArray:
-        """(L,) length of each cut inside the section [mm]."""
+        """Length of each cut inside the section, shape (L,) [mm]."""
         return self.crossings.length
 
     @property
     def walls(self) -> IntArray:
-        """(L,) number of walls crossed."""
+        """Number of walls crossed by each cut, shape (L,)."""
         return np.bincount(self.crossings.span_line, minlength=len(self.levels))
 
     @property
     def largest_in_part(self) -> FloatArray:
-        """(L, P) largest |tau| on each cut in each part, NaN where the cut misses the part [MPa]."""
+        """Largest |tau| on each cut in each part, NaN where the cut misses the part, shape (L, P) [MPa]."""
         return _read(self.readings.size, self.by_part)
 
     @property
     def largest_at(self) -> IntArray:
-        """(L,) flat index into the readings of the largest |tau| on each cut, -1 for none."""
+        """Flat index into the readings of the largest |tau| on each cut, -1 for none, shape (L,)."""
         values = np.nan_to_num(self.largest_in_part, nan=-1.0)
         result: IntArray = self.by_part[np.arange(len(values)), values.argmax(axis=1)]
         return result
 
     @property
     def largest(self) -> FloatArray:
-        """(L,) largest |tau| on each cut [MPa]."""
+        """Largest |tau| on each cut, shape (L,) [MPa]."""
         return _read(self.readings.size, self.largest_at)
 
     @property
     def largest_across(self) -> FloatArray:
-        """(L,) largest |tau . n| on each cut [MPa]."""
+        """Largest |tau . n| on each cut, shape (L,) [MPa]."""
         across = np.where(self.readings.clear, np.abs(self.readings.across), -1.0).max(axis=1, initial=-1.0)
         result = np.full(len(self.levels), -1.0)
         np.maximum.at(result, self.crossings.line, across)
@@ -93,7 +93,7 @@ class Sweep:
 
     @property
     def places(self) -> FloatArray:
-        """(L, 2) where the largest |tau| of each cut is [mm]."""
+        """Places of the largest |tau| of each cut, shape (L, 2) [mm]."""
         index = self.largest_at
         result = self.readings.places.reshape(-1, 2)[index].astype(float)
         result[index < 0] = np.nan
@@ -135,7 +135,10 @@ def _largest_index(readings: CutReadings) -> IntArray:
 
 
 def sweep(solved: SolvedFields, forces: SectionForces, name: str, normal: FloatArray, count: int = LEVELS) -> Sweep:
-    """Lay `count` evenly spaced cuts with unit normal (2,) through the section, at the middles of as many strips [N, mm, MPa]."""
+    """Lay `count` evenly spaced cuts through the section, at the middles of as many strips [N, mm, MPa].
+
+    normal : (2,) unit vector across the cuts. Arrays have the shapes in Sweep.
+    """
     heights = solved.mesh.nodes @ normal
     low, high = float(heights.min()), float(heights.max())
     levels = low + (high - low) * (np.arange(count) + 0.5) / count
@@ -152,7 +155,7 @@ def sweep(solved: SolvedFields, forces: SectionForces, name: str, normal: FloatA
 
 
 def shear_direction(forces: SectionForces) -> FloatArray:
-    """Return V/|V|, shape (2,); ValueError when there is no shear force."""
+    """Return V/|V|, shape (2,) [-]; ValueError when there is no shear force."""
     size = float(np.hypot(forces.Vy, forces.Vz))
     if size == 0:
         raise ValueError(f"there is no shear force to compare with (Vy = {forces.Vy}, Vz = {forces.Vz})")
@@ -162,7 +165,7 @@ def shear_direction(forces: SectionForces) -> FloatArray:
 def sweeps(solved: SolvedFields, forces: SectionForces, count: int = LEVELS) -> tuple[Sweep, ...]:
     """Return the cuts perpendicular to V first, then those along y and along z that are not the same [N, mm, MPa].
 
-    A V along an axis makes two families, any other one three; without V only those along the axes.
+    Arrays have the shapes in Sweep. A V along an axis makes two families, any other one three; without V only those along the axes.
     """
     if not (forces.Vy or forces.Vz):
         return axis_sweeps(solved, forces, count)

@@ -42,7 +42,7 @@ class Finding:
 
     @property
     def ratio(self) -> float:
-        """Elasticity over elementary."""
+        """Elasticity over elementary [-]; infinite when the formula gives 0."""
         return self.elasticity / self.elementary if self.elementary else float("inf")
 
 
@@ -70,7 +70,7 @@ class Verdict:
 
 
 def grade_of(ratio: float, limits: Limits) -> str:
-    """Return "good", "use with care" or "poor" for elasticity/elementary."""
+    """Return "good", "use with care" or "poor" for elasticity/elementary [-]."""
     off = abs(ratio - 1.0)
     return GOOD if off <= limits.good else CARE if off <= limits.care else POOR
 

@@ -61,7 +61,7 @@ class CutWall:
 
 
 def cut_walls(solved: SolvedFields, section: Section, count: int = STATIONS) -> tuple[CutWall, ...]:
-    """Return all walls that can be cut, in the order of the parts [mm]."""
+    """Return all walls that can be cut, in the order of the parts, arrays of the shapes in WallCuts [mm]."""
     found = []
     for part in section.parts:
         if part.name not in solved.mesh.part_names:
@@ -74,7 +74,7 @@ def cut_walls(solved: SolvedFields, section: Section, count: int = STATIONS) -> 
 
 
 def stations(wall: Wall, count: int) -> tuple[FloatArray, FloatArray]:
-    """Return points (n, 2) on a wall's mid-line and unit directions (n, 2) along it, n <= count [mm]."""
+    """Return points on a wall's mid-line [mm] and unit directions along it [-], shape (n, 2) each, n <= count."""
     points = np.asarray(wall.points, float)
     points = np.vstack([points, points[:1]]) if wall.closed else points
     steps = np.diff(points, axis=0)

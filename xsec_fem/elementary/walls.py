@@ -53,7 +53,10 @@ class WallTable:
 def wall_tables(
     solved: SolvedFields, section: Section, forces: SectionForces, count: int = STATIONS
 ) -> tuple[WallTable, ...]:
-    """Return one table for every wall of the section that can be cut [N, mm, MPa]; ValueError without a shear force."""
+    """Return one table for every wall of the section that can be cut, arrays of the shapes in WallTable [N, mm, MPa].
+
+    Raises ValueError without a shear force.
+    """
     direction = shear_direction(forces)
     return tuple(_table(solved, wall, forces, direction) for wall in cut_walls(solved, section, count))
 
