@@ -13,7 +13,10 @@ from xsec_fem.meshing.sizing import SizeTriangles
 
 @contextmanager
 def background_sizes(gmsh: Any, field: SizeTriangles) -> Iterator[None]:
-    """Make the field (gmsh's axes) the background field of the current model while the block runs."""
+    """Make the field the background field of the current model while the block runs.
+
+    Its points (n, 2) and sizes (n,) are in gmsh's axes.
+    """
     view = gmsh.view.add("sizes")
     places, sizes = field.points[field.corners], field.sizes[field.corners]
     rows = np.hstack([places[:, :, 0], places[:, :, 1], np.zeros_like(sizes), sizes])

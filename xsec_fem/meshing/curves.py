@@ -37,12 +37,15 @@ class Curve:
 
     @property
     def length(self) -> float:
-        """Length of the chords through the points; short of the curve by less than 1 % for a quarter of a circle."""
+        """Length of the chords through the points, in gmsh's axes [mm times the frame's factor].
+
+        Short of the curve by less than 1 % for a quarter of a circle.
+        """
         return float(np.hypot(*np.diff(self.points, axis=0).T).sum())
 
 
 def read_curves(gmsh: Any, geometry: Geometry) -> list[Curve]:
-    """Return every curve of the current model that bounds a face."""
+    """Return every curve of the current model that bounds a face, arrays of the shapes in Curve, in gmsh's axes."""
     tags = sorted({abs(curve) for face, _ in geometry.faces for _, curve in _boundary(gmsh, face)})
     samples = {tag: _samples(gmsh, tag) for tag in tags}
     beside: dict[int, list[int | None]] = {tag: [None, None] for tag in tags}
@@ -58,7 +61,7 @@ def read_curves(gmsh: Any, geometry: Geometry) -> list[Curve]:
 
 
 def sharp_corners(curves: Sequence[Curve], is_slit: Sequence[bool] | npt.NDArray[np.bool_]) -> FloatArray:
-    """Return the points (k, 2), in gmsh's axes, where solid turns through more than 185 degrees.
+    """Return the points, shape (k, 2), in gmsh's axes, where solid turns through more than 185 deg.
 
     A curve marked in `is_slit` parts the solid on its two sides, so that the end of a slit is a corner of 360 degrees.
     """
@@ -73,7 +76,7 @@ def sharp_corners(curves: Sequence[Curve], is_slit: Sequence[bool] | npt.NDArray
 
 
 def slit_curves(curves: Sequence[Curve], joints: Sequence[Joint], geometry: Geometry) -> npt.NDArray[np.bool_]:
-    """Return (C,) True for each curve that a joint makes a slit between its two parts; bonded strips of it are none."""
+    """Return True, shape (C,), for each curve that a joint makes a slit between its two parts; bonded strips of it are none."""
     result = np.zeros(len(curves), bool)
     names = [_parts_beside(curve, geometry.part_names) for curve in curves]
     middles = geometry.frame.from_gmsh(np.array([curve.points[len(_SAMPLES) // 2] for curve in curves]))

@@ -12,7 +12,7 @@ from xsec_fem.model.section import Section
 
 
 def read_regions(section: Section, order: int | None = None, default_order: int = 4) -> Mesh:
-    """Return the mesh of a section whose parts all are regions of one .msh or .vtu file.
+    """Return the mesh of a section whose parts all are regions of one .msh or .vtu file, nodes (N, 2) [mm].
 
     The order is the one given, else that of the file when above 1, else `default_order`; nodes of another order are
     points of the file's own map, so its curved sides stay as they are. Unused nodes are dropped, clockwise triangles

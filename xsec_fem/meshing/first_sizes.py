@@ -30,7 +30,7 @@ _ROSE = np.linspace(0, 2 * np.pi, 8, endpoint=False)
 
 
 def first_sizes(gmsh: Any, section: Section, geometry: Geometry, order: int) -> SizeField:
-    """Return sizes for the first mesh of the drawn section in the current gmsh model (file's units).
+    """Return sizes for the first mesh of the drawn section in the current gmsh model, arrays of shape (n, 2) and (n,) [mm].
 
     Across every wall lies at least one element of order 3 and higher, at least two of a lower order.
     """

@@ -23,7 +23,7 @@ def refinable(section: Section) -> bool:
 
 
 def make_mesh(section: Section, split_points: Sequence[Point] = (), sizes: SizeField | None = None) -> Mesh:
-    """Return the mesh of the section, and write it to `section.solve.mesh_file` when that is set.
+    """Return the mesh of the section, nodes (N, 2) [mm], and write it to `section.solve.mesh_file` when that is set.
 
     The order is the one in [solve], else that of the mesh file when above 1, else 4. `split_points` become nodes of a
     drawn section; `sizes` are wished element sizes [mm], those of a first mesh when None. Faying faces of joints that are

@@ -59,7 +59,11 @@ def merge_geo(gmsh: Any, section: Section) -> Geometry:
 
 
 def read_msh(path: Path) -> FileMesh:
-    """Read a .msh file with gmsh: any version, with or without physical groups. Raises MeshingError, InputError."""
+    """Read a .msh file with gmsh: any version, with or without physical groups; nodes have the shape (N, 3).
+
+    Raises MeshingError when it has no element of dimension 2 or gmsh cannot read it, InputError when these are not triangles
+    of one order from 1 to 5.
+    """
     with gmsh_session() as gmsh:
         gmsh.merge(str(path))
         types, _, node_tags = gmsh.model.mesh.getElements(2)

@@ -35,9 +35,9 @@ _RETRIES = 2
 def mesh_section(
     section: Section, order: int = 4, sizes: SizeField | None = None, split_points: Sequence[Point] = ()
 ) -> Mesh:
-    """Return the mesh, of order 1 to 5, of a section whose parts are all drawn or all surfaces of one .geo file.
+    """Return the mesh, of order 1 to 5, nodes (N, 2) [mm], of a section whose parts are all drawn or all surfaces of one .geo file.
 
-    `sizes` are wished element sizes in the section's units; when None, the first sizes from the outlines, or those that
+    `sizes` are wished element sizes in the section's units [mm]; when None, the first sizes from the outlines, or those that
     the .geo file sets. `split_points` become nodes of a drawn section. Raises MeshingError (overlap, gmsh failure,
     folded triangle), InputError (embedded part outside its host, regions that do not fit).
     """
@@ -86,7 +86,10 @@ def _spread(gmsh: Any, geometry: Geometry, field: SizeField) -> SizeTriangles:
 
 
 def face_triangles(gmsh: Any, geometry: Geometry) -> tuple[IntArray, IntArray]:
-    """Return gmsh node tags (M, 3) of all triangles and the part (M,) each belongs to."""
+    """Return gmsh's node tags of all triangles, shape (M, 3), and the part each belongs to, shape (M,).
+
+    Raises MeshingError when a face has no triangle.
+    """
     corners, part_of = [], []
     for face, part in geometry.faces:
         tags = gmsh.model.mesh.getElementsByType(2, face)[1]

@@ -35,10 +35,11 @@ class CurvedEdges:
 
 
 def elevate(nodes: FloatArray, corners: IntArray, order: int, curved: CurvedEdges) -> tuple[FloatArray, IntArray]:
-    """Return nodes and triangles of order p over the linear triangles `corners` (M, 3) with corner nodes (N, 2).
+    """Return nodes, shape (N', 2) [mm], and triangles, shape (M, n), of order p over the linear triangles `corners` (M, 3).
 
-    Corner nodes keep their numbers; then come the edge nodes, edge by edge, and the inner nodes, triangle by triangle.
-    Every edge in `curved` must be an edge of some triangle.
+    `nodes` (N, 2) are the corner nodes: they keep their numbers; then come the edge nodes, edge by edge, and the inner nodes,
+    triangle by triangle. Raises ValueError when an edge in `curved` is no triangle's edge. Source: Szabo & Babuska 1991
+    (module docstring).
     """
     if order == 1:
         return nodes, corners
@@ -64,10 +65,10 @@ def elevate(nodes: FloatArray, corners: IntArray, order: int, curved: CurvedEdge
 
 
 def change_order(nodes: FloatArray, triangles: IntArray, order: int) -> tuple[FloatArray, IntArray]:
-    """Return nodes and triangles of order p at the points of the map of the given triangles (of any order q).
+    """Return nodes and triangles of order p at the points of the map of the given triangles (of any order q, 1 to 5).
 
-    Edge nodes of two neighbours agree because both sides carry the same polynomial. Edges with equal ends and
-    different inner nodes (a slit one edge long) stay apart.
+    Shapes (N, 2) [mm] and (M, n), n the nodes of a triangle of order p. Edge nodes of two neighbours agree because both sides
+    carry the same polynomial. Edges with equal ends and different inner nodes (a slit one edge long) stay apart.
     """
     own = _order(triangles)
     if own == order:
@@ -86,7 +87,7 @@ def change_order(nodes: FloatArray, triangles: IntArray, order: int) -> tuple[Fl
 
 
 def triangle_edges(corners: IntArray, key: IntArray | None = None) -> tuple[IntArray, IntArray, npt.NDArray[np.bool_]]:
-    """Return the edges of triangles (M, 3): ends (E, 2), low number first; edge and direction of each side (M, 3).
+    """Return the edges of triangles (M, 3): ends, shape (E, 2), low number first; edge and direction of each side, shape (M, 3).
 
     Direction is True where the triangle walks from the lower to the higher number. `key` (M, 3), one number per side,
     keeps edges with equal ends apart.
@@ -103,7 +104,7 @@ def triangle_edges(corners: IntArray, key: IntArray | None = None) -> tuple[IntA
 
 
 def folded(nodes: FloatArray, triangles: IntArray) -> npt.NDArray[np.bool_]:
-    """Return (M,) True where det J <= 0 at a node or the centre of a triangle; the corners run counter-clockwise."""
+    """Return True, shape (M,), where det J <= 0 at a node or the centre of a triangle; the corners run counter-clockwise."""
     element = lagrange_triangle(_order(triangles))
     gradients = element.gradients(np.vstack([element.nodes, [[1 / 3, 1 / 3]]]))
     jacobian = np.einsum("qnr,mnd->mqdr", gradients, nodes[triangles])

@@ -31,7 +31,7 @@ _REMEDY = "Write it again as a plain .msh or .vtu with triangles of one order"
 
 
 def read_mesh_file(path: Path) -> FileMesh:
-    """Read triangles of order 1 to 5 with their regions from a .msh or .vtu file.
+    """Read triangles of order 1 to 5 with their regions from a .msh or .vtu file; nodes of shape (N, 2) in the file's unit.
 
     Regions are physical groups (.msh), an integer cell array "region" and 0/1 cell arrays "part NAME" (.vtu). Raises
     InputError with the file and what to do when it cannot be used, MissingLibraryError without meshio.

@@ -38,7 +38,7 @@ class Frame:
 
     @classmethod
     def around(cls, low: FloatArray, high: FloatArray) -> Frame:
-        """Return the frame for the bounding box from `low` (2,) to `high` (2,)."""
+        """Return the frame for the bounding box from `low` (2,) to `high` (2,) [mm]; MeshingError when it has no extent."""
         diameter = float(np.hypot(*(high - low)))
         if not (math.isfinite(diameter) and diameter > 0):
             raise MeshingError(f"the section has no extent: it reaches from {low.tolist()} to {high.tolist()}")
@@ -48,11 +48,11 @@ class Frame:
         return cls(shift, 2.0 ** (7 - math.frexp(diameter)[1]))
 
     def to_gmsh(self, points: FloatArray) -> FloatArray:
-        """Points (n, 2) in the file's axes to gmsh's."""
+        """Return points (n, 2) in the file's axes [mm] in gmsh's, same shape."""
         return (np.asarray(points, float) - self.shift) * self.factor
 
     def from_gmsh(self, points: FloatArray) -> FloatArray:
-        """Points (n, 2) in gmsh's axes to the file's."""
+        """Return points (n, 2) in gmsh's axes in the file's, same shape [mm]."""
         return points / self.factor + self.shift
 
 
@@ -68,8 +68,8 @@ class Geometry:
 def build_geometry(gmsh: Any, section: Section, split_points: Sequence[Point] = ()) -> Geometry:
     """Draw the parts of the section in the current gmsh model and return its conforming faces.
 
-    `split_points` are points that become vertices, so that the mesh has a node there. Raises MeshingError when two
-    parts overlap, InputError when an embedded part lies outside its host.
+    `split_points` are points (y, z) [mm] that become vertices, so that the mesh has a node there. Raises MeshingError when
+    two parts overlap, InputError when an embedded part lies outside its host.
     """
     _check_outlines(section)
     frame = section_frame(section)
@@ -82,7 +82,7 @@ def build_geometry(gmsh: Any, section: Section, split_points: Sequence[Point] = 
 
 
 def section_frame(section: Section) -> Frame:
-    """Return the frame around all drawn parts of the section."""
+    """Return the frame around all drawn parts of the section; MeshingError when they have no extent."""
     bounds = np.array([part.face.bounds() for part in section.parts if part.face is not None])
     return Frame.around(bounds[:, :2].min(axis=0), bounds[:, 2:].max(axis=0))
 

@@ -67,7 +67,7 @@ def common_file(section: Section) -> MeshRegion:
 
 
 def assign_regions(section: Section, regions: Sequence[Region], count: int, piece: str) -> IntArray:
-    """Return the part (count,) of each piece of the file; `piece` is what to call one, "triangle" or "surface".
+    """Return the part of each piece of the file, shape (count,); `piece` is what to call one, "triangle" or "surface".
 
     Raises InputError when a part names no region of the file, two parts name the same piece, or a piece is left over.
     """

@@ -37,7 +37,7 @@ class SizeField:
             )
 
     def with_points(self, points: FloatArray, sizes: FloatArray) -> SizeField:
-        """Return the field with more points (k, 2) and sizes (k,)."""
+        """Return the field with more points (k, 2) and sizes, shape (k,) [mm]; raises MeshingError like the constructor."""
         return SizeField(np.vstack([self.points, points]), np.concatenate([self.sizes, sizes]))
 
 

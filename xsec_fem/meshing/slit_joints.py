@@ -26,9 +26,10 @@ def joint_vertices(section: Section) -> tuple[Point, ...]:
 
 
 def open_joints(section: Section, mesh: Mesh) -> Mesh:
-    """Return the mesh with the faying faces of contact, weld and fastener joints parted, nodes (N', 2) with N' >= N.
+    """Return the mesh with the faying faces of contact, weld and fastener joints parted, nodes of shape (N', 2) with N' >= N [mm].
 
-    A mesh that is open already comes back unchanged. Raises MeshingError when the mesh has no edges that fill a strip.
+    A mesh that is open already comes back unchanged. Raises MeshingError when the mesh has no edges that fill a strip, or a
+    slit is a single edge long and has no node to double.
     """
     slits = [joint for joint in section.joints if joint.is_slit]
     if not slits:

@@ -35,7 +35,7 @@ def write_fields(path: Path, mesh: Mesh, point_fields: Mapping[str, FloatArray])
 
 
 def part_arrays(part_of: IntArray, names: tuple[str, ...]) -> dict[str, IntArray]:
-    """Return the cell arrays that keep the parts: "region" (M,) and one 0/1 array "part NAME" (M,) per part."""
+    """Return the cell arrays that keep the parts: "region" and one 0/1 array "part NAME" per part, shape (M,) each."""
     arrays = {f"part {name}": (part_of == number).astype(np.int64) for number, name in enumerate(names)}
     return {"region": np.asarray(part_of, np.int64), **arrays}
 
