@@ -23,7 +23,7 @@ def pieces(arc: Arc) -> tuple[Arc, ...]:
 
 
 def at_angle(radius: float, degrees: float) -> Point:
-    """Return the point on a circle about the origin, counter-clockwise from +y, exact at multiples of 90 deg."""
+    """Return the point, shape (2,) [mm], on a circle about the origin, counter-clockwise from +y, exact at multiples of 90 deg."""
     return Isometry.rotation(degrees)((radius, 0.0))
 
 
@@ -40,12 +40,12 @@ def swept_arcs(radius: float, from_deg: float, to_deg: float) -> tuple[Arc, ...]
 
 
 def circle_loop(radius: float) -> Loop:
-    """Return the full circle about the origin as four quarter arcs, counter-clockwise."""
+    """Return the full circle of a radius [mm] about the origin as four quarter arcs, counter-clockwise."""
     return Loop(swept_arcs(radius, 0, 360))
 
 
 def centred_arc(start: Point, end: Point, centre: Point) -> Arc | None:
-    """Return the shorter arc between two points about a centre; None for a half circle, whose side is open.
+    """Return the shorter arc between two points about a centre, shape (2,) each [mm]; None for a half circle, whose side is open.
 
     A centre typed with few digits is shifted along the chord so that both ends are equally far from it.
     """
@@ -61,7 +61,7 @@ def centred_arc(start: Point, end: Point, centre: Point) -> Arc | None:
 
 
 def through_arc(start: Point, through: Point, end: Point) -> Arc | None:
-    """Return the arc from one point through a second to a third; None when they lie on one line."""
+    """Return the arc from one point through a second to a third, shape (2,) each [mm]; None when they lie on one line."""
     a, b = (through[0] - start[0], through[1] - start[1]), (end[0] - start[0], end[1] - start[1])
     twice_area = a[0] * b[1] - a[1] * b[0]
     aa, bb = a[0] ** 2 + a[1] ** 2, b[0] ** 2 + b[1] ** 2

@@ -34,7 +34,7 @@ class AreaMoments:
 
 
 def area_moments(face: Face) -> AreaMoments:
-    """Return area, centroid and second moments of the face; its loops may run either way round."""
+    """Return area [mm²], centroid [mm] and second moments [mm⁴] of the face; its loops may run either way round."""
     y0, z0, y1, z1 = face.bounds()
     middle = ((y0 + y1) / 2, (z0 + z1) / 2)
     to_middle = Isometry.translation((-middle[0], -middle[1]))

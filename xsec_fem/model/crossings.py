@@ -13,7 +13,7 @@ _ROUND_OFF = 1e-12  # an orientation below this share of the size squared is zer
 
 
 def first_crossing(loops: Sequence[Loop], max_deg: float = 3.0) -> Point | None:
-    """Return one point where the loops cross or touch themselves or each other; None when they are simple.
+    """Return one point, shape (2,) [mm], where the loops cross or touch themselves or each other; None when they are simple.
 
     Exact for straight sides; arcs are cut into chords of `max_deg` degrees (off by r*3e-4 at 3 deg).
     """

@@ -15,7 +15,7 @@ from xsec_fem.model.wording import number_text, point_text
 
 
 def fastener_rows(joint: Joint, place: str, lines: Sequence[FayingLine], scale: Scale, faults: FaultList) -> list[Bond]:
-    """Return the strips of the rows of a joint along its faying lines; every fault is noted in `faults`.
+    """Return the strips of the rows of a joint along its faying lines [mm]; every fault is noted in `faults`.
 
     A row's position is y on lines within 45 degrees of level, z on steeper ones.
     """

@@ -39,12 +39,12 @@ class FayingLine:
 
     @property
     def start(self) -> Point:
-        """Where it starts."""
+        """Where it starts, shape (2,) [mm]."""
         return self.pieces[0].segment.start
 
     @property
     def end(self) -> Point:
-        """Where it ends."""
+        """Where it ends, shape (2,) [mm]."""
         return self.pieces[-1].segment.end
 
     @property

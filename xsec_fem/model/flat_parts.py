@@ -41,7 +41,7 @@ class Scale:
 
     @classmethod
     def of(cls, faces: Sequence[Face]) -> Scale:
-        """Return the scale of a section of at least one face."""
+        """Return the scale of a section of at least one face [mm]."""
         points = np.vstack([face.outer.polyline() for face in faces])
         size = float(np.ptp(points, axis=0).max())
         chord = CHORD * size
@@ -81,7 +81,7 @@ def flat_polygon(outer: Loop, holes: Sequence[Loop], scale: Scale) -> Polygon:
 
 
 def flat_loop(loop: Loop, scale: Scale) -> FloatArray:
-    """Return a loop as points (n, 2), its chords within `scale.chord` of the arcs."""
+    """Return a loop as points (n, 2) [mm], its chords within `scale.chord` of the arcs."""
     points = [p for segment in loop.segments for p in segment.polyline(_chord_degrees(segment, scale.chord))]
     return np.array(points, dtype=np.float64)
 

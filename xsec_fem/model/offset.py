@@ -29,7 +29,7 @@ class MidLine:
     closed: bool = False
 
     def misfits(self) -> list[Misfit]:
-        """Return the bends that overfill a piece of the mid-line, with the largest inner radius or thickness that fits.
+        """Return the bends that overfill a piece of the mid-line, with the largest inner radius or thickness that fits [mm].
 
         The key is "bend_radius", or "thickness" when there is none or even a fold (inner radius 0) would not fit.
         """
@@ -80,7 +80,7 @@ class MidLine:
         return f"piece from points[{k}] to points[{(k + 1) % len(self.points)}]"
 
     def side(self, distance: float) -> list[Corner]:
-        """Return the corners of the line at a distance to the left, radii concentric with the bends."""
+        """Return the corners of the line at a distance to the left [mm], radii concentric with the bends."""
         n = len(self.points)
         corners = []
         for k, point in enumerate(self.points):
@@ -107,7 +107,7 @@ class MidLine:
         return Face(loops[1], (loops[0],))
 
     def bent(self) -> tuple[Point, ...]:
-        """Return the mid-line with its bends, as points (m, 2), at most 5 deg of a bend apart [mm]."""
+        """Return the mid-line with its bends, as points of shape (m, 2), at most 5 deg of a bend apart [mm]."""
         radius = 0.0 if self.bend_radius is None else self.bend_radius + self.thickness / 2
         corners = [Corner(p, radius) for p in self.points]
         if self.closed:

@@ -48,7 +48,7 @@ class Isometry:
 
     @classmethod
     def translation(cls, shift: Point) -> Isometry:
-        """Shift by (y, z)."""
+        """Shift by (y, z), shape (2,) [mm]."""
         return cls(shift=shift)
 
     @property
@@ -58,7 +58,7 @@ class Isometry:
         return a * d - b * c > 0
 
     def vector(self, v: Point) -> Point:
-        """Turn a direction, shape (2,), without the shift."""
+        """Turn a direction, shape (2,), without the shift; its length and unit stay."""
         (a, b), (c, d) = self.matrix
         return (a * v[0] + b * v[1], c * v[0] + d * v[1])
 
@@ -99,16 +99,16 @@ class Line:
         return 0.5 * _cross(self.start, self.end)
 
     def extremes(self) -> list[Point]:
-        """Points that span the bounding box, ends included."""
+        """Points (n, 2) that span the bounding box, ends included [mm]."""
         return [self.start, self.end]
 
     def at(self, s: FloatArray) -> tuple[FloatArray, FloatArray]:
-        """Return points and derivatives by s, both (n, 2), at parameters s (n,) from 0 to 1."""
+        """Return points and derivatives by s [mm], both (n, 2), at parameters s (n,) from 0 to 1."""
         step = np.subtract(self.end, self.start)
         return np.asarray(self.start) + s[:, None] * step, np.broadcast_to(step, (len(s), 2)).astype(np.float64)
 
     def polyline(self, max_deg: float) -> list[Point]:
-        """Points from the start up to, not including, the end (only the start here)."""
+        """Points (n, 2) from the start up to, not including, the end [mm] (only the start here)."""
         return [self.start]
 
 
@@ -208,15 +208,15 @@ class Arc:
         return Arc(self.end, self.start, self.centre, not self.ccw)
 
     def extremes(self) -> list[Point]:
-        """Points that span the bounding box, ends included."""
+        """Points (n, 2) that span the bounding box, ends included [mm]."""
         return [self.start, self.end, *self._swept.turning_points()]
 
     def at(self, s: FloatArray) -> tuple[FloatArray, FloatArray]:
-        """Return points and derivatives by s, both (n, 2), at parameters s (n,) from 0 to 1."""
+        """Return points and derivatives by s [mm], both (n, 2), at parameters s (n,) from 0 to 1."""
         return self._swept.at(s)
 
     def polyline(self, max_deg: float) -> list[Point]:
-        """Points on the arc, the end left out, no more than `max_deg` apart."""
+        """Points (n, 2) on the arc, the end left out, no more than `max_deg` [deg] apart [mm]."""
         return self._swept.polyline(self.start, max_deg)
 
 
@@ -262,15 +262,15 @@ class EllipseArc:
         return EllipseArc(self.end, self.start, self.centre, self.major, self.ratio, not self.ccw)
 
     def extremes(self) -> list[Point]:
-        """Points that span the bounding box, ends included."""
+        """Points (n, 2) that span the bounding box, ends included [mm]."""
         return [self.start, self.end, *self._swept.turning_points()]
 
     def at(self, s: FloatArray) -> tuple[FloatArray, FloatArray]:
-        """Return points and derivatives by s, both (n, 2), at parameters s (n,) from 0 to 1."""
+        """Return points and derivatives by s [mm], both (n, 2), at parameters s (n,) from 0 to 1."""
         return self._swept.at(s)
 
     def polyline(self, max_deg: float) -> list[Point]:
-        """Points on the arc, the end left out, no more than `max_deg` of the parameter apart."""
+        """Points (n, 2) on the arc, the end left out, no more than `max_deg` [deg] of the parameter apart [mm]."""
         return self._swept.polyline(self.start, max_deg)
 
 
@@ -305,7 +305,7 @@ class Loop:
         return (min(y), min(z), max(y), max(z))
 
     def polyline(self, max_deg: float = 3.0) -> FloatArray:
-        """Return the loop as points, shape (n, 2), closing point not repeated; arcs cut every `max_deg` degrees."""
+        """Return the loop as points, shape (n, 2) [mm], closing point not repeated; arcs cut every `max_deg` degrees."""
         return np.array([p for segment in self.segments for p in segment.polyline(max_deg)], dtype=np.float64)
 
     def moved(self, move: Isometry) -> Loop:
@@ -344,7 +344,7 @@ class Face:
 
 
 def polygon_loop(points: Sequence[Point]) -> Loop:
-    """Return the loop of straight lines through the points (n, 2), n >= 3; the last joins the first."""
+    """Return the loop of straight lines through the points (n, 2) [mm], n >= 3; the last joins the first."""
     n = len(points)
     return Loop(tuple(Line(points[k], points[(k + 1) % n]) for k in range(n)))
 

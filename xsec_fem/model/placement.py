@@ -18,7 +18,7 @@ from xsec_fem.model.section import Wall
 def placement(face: Face, anchor: str, at: Point, rotate: float = 0.0, mirror: str | None = None) -> Isometry:
     """Return the map from the face's own coordinates to the section's axes.
 
-    `anchor` is one of the words drawn above, `at` [mm] is where it goes, `rotate` [deg] is counter-clockwise, `mirror`
+    `anchor` is one of the words drawn above, `at`, shape (2,) [mm], is where it goes, `rotate` [deg] is counter-clockwise, `mirror`
     "y" flips left and right, "z" top and bottom.
     """
     y, z = anchor_point(face, anchor)
@@ -29,7 +29,7 @@ def placement(face: Face, anchor: str, at: Point, rotate: float = 0.0, mirror: s
 
 
 def anchor_point(face: Face, anchor: str) -> Point:
-    """Return the anchor in the face's own coordinates [mm]."""
+    """Return the anchor in the face's own coordinates, shape (2,) [mm]."""
     if anchor == "origin":
         return (0.0, 0.0)
     y0, z0, y1, z1 = extent(face.outer)
@@ -46,7 +46,7 @@ def extent(loop: Loop) -> tuple[float, float, float, float]:
 
 
 def moved_walls(walls: tuple[Wall, ...], move: Isometry) -> tuple[Wall, ...]:
-    """Return the walls after an isometry."""
+    """Return the walls after an isometry, mid-lines of points (n, 2) [mm]."""
     return tuple(Wall(w.name, tuple(move(p) for p in w.points), w.thickness, w.closed) for w in walls)
 
 

@@ -15,9 +15,10 @@ _SAME_PLACE = 1e-9  # of the loop's size: places come back from the mesh with ro
 
 
 def with_root_radius(section: Section, radius: float, places: Sequence[Point]) -> Section:
-    """Return the section with the corners at the places (y, z) [mm] rounded, wherever two straight sides of one part meet there.
+    """Return the section with the corners at the places, shape (n, 2) [mm], rounded with a radius [mm].
 
-    Raises InputError, one fault a corner, where the radius does not fit beside it.
+    A corner is rounded wherever two straight sides of one part meet there. Raises InputError, one fault a corner, where the
+    radius does not fit beside it.
     """
     faults: list[Fault] = []
     parts = tuple(_rounded_part(part, radius, places, section, faults) for part in section.parts)

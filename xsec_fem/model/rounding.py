@@ -64,7 +64,7 @@ def half_turned(half: Sequence[Corner]) -> list[Corner]:
 
 
 def tangent_factor(before: Point, corner: Point, after: Point) -> float:
-    """Return tangent length / radius, 1/tan(phi/2); 0 when the corner is straight, infinite when it folds back."""
+    """Return tangent length / radius, 1/tan(phi/2) [-]; 0 when the corner is straight, infinite when it folds back."""
     a, b = _unit(corner, before), _unit(corner, after)
     cosine, sine = a[0] * b[0] + a[1] * b[1], abs(a[0] * b[1] - a[1] * b[0])
     if sine < _STRAIGHT:
@@ -73,7 +73,7 @@ def tangent_factor(before: Point, corner: Point, after: Point) -> float:
 
 
 def misfits(corners: Sequence[Corner], closed: bool = True) -> list[Misfit]:
-    """Return the radii that do not fit their sides, one per key with the tightest limit; no two points in a row equal.
+    """Return the radii that do not fit their sides, one per key with the tightest limit [mm]; no two points in a row equal.
 
     Where two different numbers share a side, the one that alone is too large is named, else the longer of the two.
     """

@@ -113,11 +113,11 @@ class Bond:
     Attributes
     ----------
     name : "bead 1", "row y = 70".
-    strip : ends of the stretch of the faying line that stays bonded (row, penetration); None without one.
+    strip : ends of the stretch of the faying line that stays bonded (row, penetration) [mm]; None without one.
     bead : name of the bead's part.
-    throat : from the root to the nearest point of the bead's surface.
+    throat : from the root to the nearest point of the bead's surface [mm].
     leg : length of the bead's legs [mm].
-    angle_deg : angle between the fusion faces.
+    angle_deg : angle between the fusion faces [deg].
     """
 
     name: str
@@ -154,7 +154,7 @@ class Joint:
 
 @dataclass(frozen=True)
 class Cut:
-    """A straight cut from one point to another, to be looked at."""
+    """A straight cut from one point (y, z) to another [mm], to be looked at."""
 
     name: str
     start: Point
@@ -163,7 +163,7 @@ class Cut:
 
 @dataclass(frozen=True)
 class Probe:
-    """A point whose stresses are wanted."""
+    """A point (y, z) [mm] whose stresses are wanted."""
 
     name: str
     at: Point

@@ -125,7 +125,10 @@ def _fits(weld: FilletWeld, end: FreeEnd, place: str, scale: Scale, faults: Faul
 
 
 def leg_of(weld: FilletWeld, phi: float) -> float:
-    """Return the leg of a weld between faces at the angle phi [rad]; throat = leg cos(phi/2) [mm]."""
+    """Return the leg of a weld between faces at the angle phi [rad]; throat = leg cos(phi/2) [mm].
+
+    Source: EN 1993-1-8:2005, 4.5.2 (throat), the leg derived here.
+    """
     return weld.leg if weld.leg is not None else (weld.throat or 0.0) / math.cos(phi / 2)
 
 

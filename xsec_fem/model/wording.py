@@ -112,7 +112,7 @@ def named(place: str, name: object) -> str:
 
 
 def point_text(point: Point, size: float) -> str:
-    """Return '(y, z)' rounded to six digits of the section's `size`, so that round-off reads as 0."""
+    """Return a point, shape (2,), as '(y, z)' rounded to six digits of the section's `size` [mm], so that round-off reads as 0."""
     return "(" + ", ".join(number_text(float(f"{_without_noise(value, size):.6g}")) for value in point) + ")"
 
 

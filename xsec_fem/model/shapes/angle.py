@@ -29,7 +29,7 @@ class Angle(CorneredShape):
         ][:1]
 
     def corners(self) -> list[Corner]:
-        """Six corners, counter-clockwise from the heel."""
+        """Six corners [mm], counter-clockwise from the heel."""
         y, z, t = self.width, self.depth, self.thickness
         return [
             Corner((0.0, 0.0), edge="bottom"),
@@ -41,7 +41,7 @@ class Angle(CorneredShape):
         ]
 
     def walls(self) -> tuple[Wall, ...]:
-        """The two legs, joined on their mid-lines."""
+        """The two legs, joined on their mid-lines: points (2, 2) each [mm]."""
         m = self.thickness / 2
         return (
             Wall("vertical leg", ((m, m), (m, self.depth)), self.thickness),

@@ -56,10 +56,10 @@ class ShapeSpec(BaseModel):
 
     @abstractmethod
     def face(self) -> Face:
-        """Return the face in the shape's own coordinates; only meant when `problems()` is empty."""
+        """Return the face in the shape's own coordinates [mm]; only meant when `problems()` is empty."""
 
     def walls(self) -> tuple[Wall, ...]:
-        """Return mid-line and thickness of the named walls [mm]; none for a solid shape.
+        """Return mid-line, points (n, 2), and thickness of the named walls [mm]; none for a solid shape.
 
         Mid-lines run on to the mid-lines of the walls they meet, so that together they form one connected line model.
         """
@@ -75,14 +75,14 @@ class CorneredShape(ShapeSpec):
 
     @abstractmethod
     def corners(self) -> list[Corner]:
-        """Return the outline's corners in order, with their radii."""
+        """Return the outline's corners in order, with their radii [mm]."""
 
     def problems(self) -> list[Problem]:
         """Return broken rules on sizes, and when there are none those on radii."""
         return self.size_problems() or radius_problems(self.corners())
 
     def face(self) -> Face:
-        """Return the face with its corners rounded."""
+        """Return the face with its corners rounded [mm]."""
         return Face(rounded_loop(self.corners()))
 
 
@@ -100,7 +100,7 @@ def at_most(limit: float) -> str:
 
 
 def place(point: Point) -> str:
-    """Return a point as text, '(y, z)'."""
+    """Return a point, shape (2,), as text, '(y, z)'."""
     return f"({text(point[0])}, {text(point[1])})"
 
 
@@ -115,7 +115,7 @@ def fills(value: float, limit: float) -> bool:
 
 
 def near(points: Sequence[Point]) -> float:
-    """Return the distance below which two of the points count as one [mm]."""
+    """Return the distance below which two of the points (n, 2) count as one [mm]."""
     y, z = [p[0] for p in points], [p[1] for p in points]
     return _ROUND_OFF * max(max(y) - min(y), max(z) - min(z))
 
@@ -142,7 +142,7 @@ def crossing_problems(loops: Sequence[Loop], key: str) -> list[Problem]:
 
 
 def repeated_points(points: Sequence[Point], key: str, closed: bool) -> list[Problem]:
-    """Return one problem per point that equals the one before it (and the first, when closed), but for round-off."""
+    """Return one problem per point of (n, 2) that equals the one before it (and the first, when closed), but for round-off."""
     found, same = [], near(points)
     for k in range(len(points)):
         if k and math.dist(points[k], points[k - 1]) <= same:

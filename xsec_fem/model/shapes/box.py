@@ -76,11 +76,14 @@ class Box(ShapeSpec):
         return _rectangle(left, right, self.depth / 2 - self.flange, self.inner_radius, "inner_radius")
 
     def face(self) -> Face:
-        """The outer loop and one hole per cell."""
+        """The outer loop and one hole per cell [mm]."""
         return Face(rounded_loop(self._outer()), tuple(rounded_loop(self._cell(k)) for k in range(self.cells)))
 
     def walls(self) -> tuple[Wall, ...]:
-        """Top and bottom flange, then "web 1" to "web n + 1" from left to right, joined on their mid-lines."""
+        """Top and bottom flange, then "web 1" to "web n + 1" from left to right, joined on their mid-lines.
+
+        Each has points (2, 2) [mm].
+        """
         y, z, step = (self.width - self.web) / 2, (self.depth - self.flange) / 2, self.cell_width + self.web
         top = Wall("top flange", ((-y, z), (y, z)), self.flange)
         bottom = Wall("bottom flange", ((-y, -z), (y, -z)), self.flange)

@@ -42,7 +42,7 @@ class Channel(CorneredShape):
         return found or flange_problems(self.depth, [self._flange()] * 2)
 
     def corners(self) -> list[Corner]:
-        """Eight corners, twelve with lips, counter-clockwise from the bottom left."""
+        """Eight corners [mm], twelve with lips, counter-clockwise from the bottom left."""
         flange, y, z = self._flange(), self.width / 2, self.depth / 2
         root = Corner((self.web - y, flange.root - z), self.root_radius, "root_radius", "web")
         if self.lip is None:
@@ -60,7 +60,7 @@ class Channel(CorneredShape):
         return mirrored([Corner((-y, -z), edge="bottom"), *tip, root], "z")
 
     def walls(self) -> tuple[Wall, ...]:
-        """Web, top and bottom flange, and the lips, all joined on their mid-lines."""
+        """Web, top and bottom flange, and the lips, all joined on their mid-lines: points (2, 2) each [mm]."""
         y, z, y_web = self.width / 2, (self.depth - self.flange) / 2, (self.web - self.width) / 2
         tip = y if self.lip is None else y - self.flange / 2
         found = [
@@ -96,7 +96,7 @@ class Zed(CorneredShape):
         return found or flange_problems(self.depth, [Flange(self.flange, (self.width - self.web) / 2)] * 2)
 
     def corners(self) -> list[Corner]:
-        """Eight corners, twelve with lips, counter-clockwise from the web's bottom right."""
+        """Eight corners [mm], twelve with lips, counter-clockwise from the web's bottom right."""
         y, z, z_inner = self.width / 2, self.depth / 2, self.depth / 2 - self.flange
         half = [
             Corner((self.web / 2, -z), edge="web"),
@@ -110,7 +110,7 @@ class Zed(CorneredShape):
         return half_turned([*half, Corner((y, z))])
 
     def walls(self) -> tuple[Wall, ...]:
-        """Web, top and bottom flange, and the lips, all joined on their mid-lines."""
+        """Web, top and bottom flange, and the lips, all joined on their mid-lines: points (2, 2) each [mm]."""
         z, tip = (self.depth - self.flange) / 2, self.width / 2 - (0.0 if self.lip is None else self.flange / 2)
         top: list[tuple[str, tuple[Point, Point]]] = [("flange", ((0.0, z), (tip, z)))]
         if self.lip is not None:

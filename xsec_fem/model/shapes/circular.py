@@ -20,7 +20,7 @@ class Circle(ShapeSpec):
     diameter: Positive = Field(description="Give the outer diameter.")
 
     def face(self) -> Face:
-        """Four quarter arcs."""
+        """Four quarter arcs [mm]."""
         return Face(circle_loop(self.diameter / 2))
 
 
@@ -31,7 +31,7 @@ class Ellipse(ShapeSpec):
     height: Positive = Field(description="Give the whole size along z.")
 
     def face(self) -> Face:
-        """Four quarter arcs, of a circle when width and height are equal."""
+        """Four quarter arcs [mm], of a circle when width and height are equal."""
         y, z = self.width / 2, self.height / 2
         if y == z:
             return Face(circle_loop(y))
@@ -55,11 +55,11 @@ class Ring(ShapeSpec):
         return [not_below("thickness", self.thickness, self.diameter / 2, "half the diameter", remedy)]
 
     def face(self) -> Face:
-        """Outer circle and one hole."""
+        """Outer circle and one hole [mm]."""
         return Face(circle_loop(self.diameter / 2), (circle_loop(self.diameter / 2 - self.thickness),))
 
     def walls(self) -> tuple[Wall, ...]:
-        """One closed wall."""
+        """One closed wall, points (n, 2) on its mid-line at most 5 deg apart [mm]."""
         loop = circle_loop((self.diameter - self.thickness) / 2)
         points = tuple((float(y), float(z)) for y, z in loop.polyline(_WALL_STEP))
         return (Wall("wall", points, self.thickness, closed=True),)
@@ -102,7 +102,7 @@ class Sector(ShapeSpec):
         return found
 
     def face(self) -> Face:
-        """Outer arcs, then the centre or the inner arcs walked back; a whole turn is a circle."""
+        """Outer arcs, then the centre or the inner arcs walked back; a whole turn is a circle [mm]."""
         outer = swept_arcs(self.radius, self.from_deg, self.to_deg)
         first, last = outer[0].start, outer[-1].end
         opening = self._opening
@@ -116,7 +116,7 @@ class Sector(ShapeSpec):
         return Face(Loop((*outer, Line(last, (0.0, 0.0)), Line((0.0, 0.0), first))))
 
     def walls(self) -> tuple[Wall, ...]:
-        """One open wall for a ring sector."""
+        """One open wall for a ring sector, points (n, 2) on its mid-line about 5 deg apart [mm]."""
         if self.thickness is None:
             return ()
         radius, opening = self.radius - self.thickness / 2, self._opening

@@ -101,5 +101,5 @@ class Outline(ShapeSpec):
         return crossing_problems([loop], "steps")
 
     def face(self) -> Face:
-        """The closed outline."""
+        """The closed outline [mm]."""
         return Face(self._loop())

@@ -48,7 +48,7 @@ class IShape(CorneredShape):
         return found or flange_problems(self.depth, self._flanges())
 
     def corners(self) -> list[Corner]:
-        """Twelve corners, counter-clockwise from the bottom right."""
+        """Twelve corners [mm], counter-clockwise from the bottom right."""
         top, bottom = self._flanges()
         z, y, y_top, y_bottom = self.depth / 2, self.web / 2, self.width / 2, (self.bottom_width or self.width) / 2
         half = [
@@ -62,7 +62,7 @@ class IShape(CorneredShape):
         return mirrored(half, "y")
 
     def walls(self) -> tuple[Wall, ...]:
-        """Web between the flanges' mid-lines, top and bottom flange."""
+        """Web between the flanges' mid-lines, top and bottom flange: points (2, 2) each [mm]."""
         top, bottom = self._flanges()
         z_top, z_bottom = (self.depth - top.thickness) / 2, (bottom.thickness - self.depth) / 2
         y_top, y_bottom = self.width / 2, (self.bottom_width or self.width) / 2
@@ -94,7 +94,7 @@ class Tee(CorneredShape):
         return flange_problems(self.depth, [self._flange()])
 
     def corners(self) -> list[Corner]:
-        """Eight corners, counter-clockwise from the web's bottom right."""
+        """Eight corners [mm], counter-clockwise from the web's bottom right."""
         flange, y, z = self._flange(), self.web / 2, self.depth / 2
         half = [
             Corner((y, -z), edge="web"),
@@ -105,7 +105,7 @@ class Tee(CorneredShape):
         return mirrored(half, "y")
 
     def walls(self) -> tuple[Wall, ...]:
-        """Web up to the flange's mid-line, and the top flange."""
+        """Web up to the flange's mid-line, and the top flange: points (2, 2) each [mm]."""
         z, y = (self.depth - self.flange) / 2, self.width / 2
         return (
             Wall("web", ((0.0, -self.depth / 2), (0.0, z)), self.web),

@@ -28,7 +28,7 @@ class Rectangle(CorneredShape):
     corner_radius: NotNegative = Field(0.0, description="Give the radius of all four corners.")
 
     def corners(self) -> list[Corner]:
-        """Four corners, counter-clockwise from the bottom left."""
+        """Four corners [mm], counter-clockwise from the bottom left."""
         y, z, r = self.width / 2, self.height / 2, self.corner_radius
         sides = ("bottom", "right side", "top", "left side")
         points = ((-y, -z), (y, -z), (y, z), (-y, z))
@@ -45,7 +45,7 @@ class Polygon(CorneredShape):
     radii: tuple[NotNegative, ...] | None = Field(None, description="Give one radius per point, 0 for a sharp corner.")
 
     def corners(self) -> list[Corner]:
-        """The points with their radii; sides are named by their ends."""
+        """The points (n, 2) with their radii [mm]; sides are named by their ends."""
         found = []
         for k, point in enumerate(self.points):
             side = f"side from {place(point)} to {place(self.points[(k + 1) % len(self.points)])}"

@@ -66,11 +66,11 @@ class Strip(ShapeSpec):
         return crossing_problems(self.face().loops, "points")
 
     def face(self) -> Face:
-        """One loop when open; outer loop and one hole when closed."""
+        """One loop when open; outer loop and one hole when closed [mm]."""
         return self._mid_line().face()
 
     def walls(self) -> tuple[Wall, ...]:
-        """One wall along the mid-line, bends included."""
+        """One wall along the mid-line, bends included: points (n, 2) [mm]."""
         return (Wall("wall", self._mid_line().bent(), self.thickness, self.closed),)
 
 
@@ -90,9 +90,9 @@ class Plate(ShapeSpec):
         return [Problem("to", "must differ from `from`", place(self.end), "Give the mid-line's other end.")]
 
     def face(self) -> Face:
-        """Four straight sides."""
+        """Four straight sides [mm]."""
         return MidLine((self.start, self.end), self.thickness).face()
 
     def walls(self) -> tuple[Wall, ...]:
-        """One wall along the mid-line."""
+        """One wall along the mid-line, points (2, 2) [mm]."""
         return (Wall("wall", (self.start, self.end), self.thickness),)
