@@ -137,7 +137,7 @@ def _largest_index(readings: CutReadings) -> IntArray:
 def sweep(solved: SolvedFields, forces: SectionForces, name: str, normal: FloatArray, count: int = LEVELS) -> Sweep:
     """Lay `count` evenly spaced cuts through the section, at the middles of as many strips [N, mm, MPa].
 
-    normal : (2,) unit vector across the cuts. Arrays have the shapes in Sweep.
+    normal : (2,) unit vector across the cuts. Arrays are shaped as in Sweep.
     """
     heights = solved.mesh.nodes @ normal
     low, high = float(heights.min()), float(heights.max())
@@ -165,7 +165,7 @@ def shear_direction(forces: SectionForces) -> FloatArray:
 def sweeps(solved: SolvedFields, forces: SectionForces, count: int = LEVELS) -> tuple[Sweep, ...]:
     """Return the cuts perpendicular to V first, then those along y and along z that are not the same [N, mm, MPa].
 
-    Arrays have the shapes in Sweep. A V along an axis makes two families, any other one three; without V only those along the axes.
+    Arrays are shaped as in Sweep. A V along an axis makes two families, any other one three; without V only those along the axes.
     """
     if not (forces.Vy or forces.Vz):
         return axis_sweeps(solved, forces, count)

@@ -61,7 +61,7 @@ class CutWall:
 
 
 def cut_walls(solved: SolvedFields, section: Section, count: int = STATIONS) -> tuple[CutWall, ...]:
-    """Return all walls that can be cut, in the order of the parts, arrays of the shapes in WallCuts [mm]."""
+    """Return all walls that can be cut, in the order of the parts, arrays shaped as in WallCuts [mm]."""
     found = []
     for part in section.parts:
         if part.name not in solved.mesh.part_names:

@@ -53,7 +53,7 @@ class WallTable:
 def wall_tables(
     solved: SolvedFields, section: Section, forces: SectionForces, count: int = STATIONS
 ) -> tuple[WallTable, ...]:
-    """Return one table for every wall of the section that can be cut, arrays of the shapes in WallTable [N, mm, MPa].
+    """Return one table for every wall of the section that can be cut, arrays shaped as in WallTable [N, mm, MPa].
 
     Raises ValueError without a shear force.
     """

@@ -110,7 +110,7 @@ class EdgeCurves:
         return np.stack([evaluate(c[..., d], u) for d in (0, 1)], axis=-1)
 
     def pieces(self, normal: FloatArray) -> EdgePieces:
-        """Return the pieces of all edges along a unit direction of shape (2,), arrays as in EdgePieces; heights in mm."""
+        """Return the pieces of all edges along a unit direction of shape (2,), arrays shaped as in EdgePieces; heights in mm."""
         heights = self.mesh.nodes @ normal
         straight, bent = np.flatnonzero(~self.curved), np.flatnonzero(self.curved)
         ends = heights[self.nodes[:, [0, -1]]]

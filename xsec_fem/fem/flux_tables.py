@@ -86,7 +86,7 @@ def lift_fields(degree: int, source: int, points: FloatArray) -> FloatArray:
 
 @lru_cache
 def flux_tables(order: int, curved: bool) -> FluxTables:
-    """Return the tables for warping functions of that order, 1 to 5, arrays of the shapes in FluxTables [-]."""
+    """Return the tables for warping functions of that order, 1 to 5, arrays shaped as in FluxTables [-]."""
     rule = curved_rule(order) if curved else straight_rule(order)
     degree, source = flux_degree(order), source_degree(order, curved)
     free = free_fields(degree, rule.points)

@@ -172,7 +172,7 @@ class Crossings:
 
 
 def line_crossings(curves: EdgeCurves, normal: FloatArray, levels: FloatArray) -> Crossings:
-    """Lay lines n . x = level through the mesh, arrays of the shapes in Crossings.
+    """Lay lines n . x = level through the mesh, arrays shaped as in Crossings.
 
     normal : (2,) unit direction. levels : (L,) ascending [mm]; ValueError when they are not.
     """
@@ -183,7 +183,7 @@ def line_crossings(curves: EdgeCurves, normal: FloatArray, levels: FloatArray) -
 
 
 def crossings_of(hits: EdgeHits) -> Crossings:
-    """Pair the hits of each triangle into intervals and chain the intervals into spans, shapes as in Crossings [mm]."""
+    """Pair the hits of each triangle into intervals and chain the intervals into spans, shaped as in Crossings [mm]."""
     edges, per_line = hits.curves.edges, len(hits.curves.mesh.triangles)
     owner, local = edges.triangles[hits.edge], edges.local[hits.edge]
     hit, side = np.nonzero(owner >= 0)

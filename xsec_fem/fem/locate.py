@@ -40,7 +40,7 @@ def reference_coordinates(mesh: Mesh, elements: IntArray, points: FloatArray) ->
 def find_triangles(mesh: Mesh, point: tuple[float, float]) -> tuple[IntArray, FloatArray]:
     """Return all triangles that hold the point (y, z) [mm], edges included, and its reference coordinates there [-].
 
-    Shapes (m,) and (m, 2); empty arrays when the point lies outside the section.
+    Their shape is (m,) and (m, 2); both are empty when the point lies outside the section.
     """
     target = np.asarray(point, float)
     low, high = mesh.boxes

@@ -60,7 +60,8 @@ class Mesh:
     ) -> Mesh:
         """Make a mesh from raw arrays: unused nodes are dropped, clockwise triangles are turned round.
 
-        Shapes as in the class (a third coordinate of the nodes is left out) [mm]; raises MeshingError like the constructor.
+        Arrays are shaped as in the class (a third coordinate of the nodes is left out) [mm]; raises MeshingError like the
+        constructor.
         """
         nodes, triangles = np.asarray(nodes, float)[:, :2], np.asarray(triangles, np.int64)
         corner = nodes[triangles[:, :3]]

@@ -36,7 +36,7 @@ class PartNodes:
 
     @classmethod
     def of(cls, mesh: Mesh) -> PartNodes:
-        """Number the pairs of a mesh, sorted by part, then node; arrays of the shapes in the class, (S,) and (M, n)."""
+        """Number the pairs of a mesh, sorted by part, then node; arrays shaped as in the class, (S,) and (M, n)."""
         size = len(mesh.nodes)
         keys = mesh.triangles + size * mesh.part_of[:, None]
         pairs, triangles = np.unique(keys, return_inverse=True)

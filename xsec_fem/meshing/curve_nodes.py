@@ -17,7 +17,7 @@ IntArray = npt.NDArray[np.int64]
 def curved_edges(gmsh: Any, number_of: IntArray, order: int) -> CurvedEdges:
     """Return the edges on curves that are not straight lines, with nodes at equal steps of the curve's parameter.
 
-    Arrays have the shapes in CurvedEdges, coordinates are gmsh's. `number_of` maps a gmsh node tag to a node number, -1 for a
+    Arrays are shaped as in CurvedEdges, coordinates are gmsh's. `number_of` maps a gmsh node tag to a node number, -1 for a
     node that no triangle uses. Raises MeshingError when gmsh's nodes do not follow a curve's parameter.
     """
     ends, nodes = [np.zeros((0, 2), np.int64)], [np.zeros((0, order - 1, 2))]

@@ -45,7 +45,7 @@ class Curve:
 
 
 def read_curves(gmsh: Any, geometry: Geometry) -> list[Curve]:
-    """Return every curve of the current model that bounds a face, arrays of the shapes in Curve, in gmsh's axes."""
+    """Return every curve of the current model that bounds a face, arrays shaped as in Curve, in gmsh's axes."""
     tags = sorted({abs(curve) for face, _ in geometry.faces for _, curve in _boundary(gmsh, face)})
     samples = {tag: _samples(gmsh, tag) for tag in tags}
     beside: dict[int, list[int | None]] = {tag: [None, None] for tag in tags}

@@ -67,8 +67,8 @@ def elevate(nodes: FloatArray, corners: IntArray, order: int, curved: CurvedEdge
 def change_order(nodes: FloatArray, triangles: IntArray, order: int) -> tuple[FloatArray, IntArray]:
     """Return nodes and triangles of order p at the points of the map of the given triangles (of any order q, 1 to 5).
 
-    Shapes (N, 2) [mm] and (M, n), n the nodes of a triangle of order p. Edge nodes of two neighbours agree because both sides
-    carry the same polynomial. Edges with equal ends and different inner nodes (a slit one edge long) stay apart.
+    Their shape is (N, 2) [mm] and (M, n), n the nodes of a triangle of order p. Edge nodes of two neighbours agree because
+    both sides carry the same polynomial. Edges with equal ends and different inner nodes (a slit one edge long) stay apart.
     """
     own = _order(triangles)
     if own == order:

@@ -40,7 +40,7 @@ class _Chords:
 def wall_samples(outer: Loop, holes: Sequence[Loop], spacing: float) -> WallSamples:
     """Return samples along all loops of one part, no farther apart than `spacing` [mm], at least three per straight side.
 
-    Arrays have the shapes (n, 2) and (n,), as in WallSamples [mm].
+    Arrays have the shape (n, 2) or (n,), as in WallSamples [mm].
 
     The thickness is the distance along the inward normal to the chord met first, over the squared cosine between the
     normals of the two: a pointed corner is not a thin wall.

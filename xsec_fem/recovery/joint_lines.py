@@ -50,7 +50,7 @@ class BondLine:
 def bond_lines(
     joint: Joint, fields: UnitFields, edges: Edges, inside: npt.NDArray[np.bool_], corners: Sequence[Corner]
 ) -> list[BondLine]:
-    """Return the bonds of a joint, arrays of the shapes in BondLine [mm]; none for contact, which has no bonds.
+    """Return the bonds of a joint, arrays shaped as in BondLine [mm]; none for contact, which has no bonds.
 
     `inside` (M,) marks the triangles of its first side. Raises ValueError when its sides share no edge, or when faying faces
     that should be a slit are bonded in the mesh.

@@ -40,7 +40,7 @@ class JointSide:
 def joint_sides(connections: Connections, mesh: Mesh, edges: Edges, joint: Joint) -> list[JointSide]:
     """Return what the joint cuts off: one side when it separates the section, else two candidates.
 
-    Arrays have the shapes in JointSide. The two are what hangs on the first parts, and all that does not hang on the second ones.
+    Arrays are shaped as in JointSide. The two are what hangs on the first parts, and all that does not hang on the second ones.
     """
     first = _triangles_of(mesh, joint.first)
     second = _triangles_of(mesh, {*joint.second, *connections.beads(joint)})

@@ -94,7 +94,7 @@ class Readings:
 def corner_rings(mesh: Mesh, corners: Sequence[Corner]) -> Samples:
     """Return the points inside the material on the circles of the stated distance round all singular corners [mm].
 
-    Arrays have the shapes in Samples.
+    Arrays are shaped as in Samples.
     """
     elements, values, places, owner = [], [], [], []
     for number, corner in enumerate(corners):
@@ -118,7 +118,7 @@ def largest_by_part(
 ) -> tuple[Largest, ...]:
     """Return the largest |tau| or equivalent stress in each part, in the mesh's order of parts [MPa].
 
-    `rings` are the points of `corner_rings`, shapes as in Samples. A part that lies within the corners' distances altogether is
+    `rings` are the points of `corner_rings`, shaped as in Samples. A part that lies within the corners' distances altogether is
     read at its nodes.
     """
     numbering = field.part_nodes

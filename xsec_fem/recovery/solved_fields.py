@@ -59,7 +59,7 @@ class SolvedFields:
 
     @cached_property
     def curves(self) -> EdgeCurves:
-        """The edges as curves, arrays of the shapes in EdgeCurves [mm]."""
+        """The edges as curves, arrays shaped as in EdgeCurves [mm]."""
         return EdgeCurves(self.mesh, self.edges)
 
     @cached_property
@@ -69,7 +69,7 @@ class SolvedFields:
 
     @cached_property
     def plain(self) -> UnitFields:
-        """Nodal fields without the Poisson effect (nu = 0), arrays of the shapes in UnitFields [MPa per N, MPa per N mm].
+        """Nodal fields without the Poisson effect (nu = 0), arrays shaped as in UnitFields [MPa per N, MPa per N mm].
 
         They come from the same solution: its Poisson parts are left out.
         """
