@@ -6,6 +6,7 @@ from functools import lru_cache
 
 import pytest
 
+from tests.report.more_sections import MORE
 from tests.report.sections import ALL
 from xsec_fem.model.reader import parse_section
 from xsec_fem.pipeline import solve
@@ -16,7 +17,7 @@ from xsec_fem.results import Result
 
 @lru_cache
 def _solved(name: str) -> Result:
-    return solve(parse_section(ALL[name], f"{name}.toml"))
+    return solve(parse_section({**ALL, **MORE}[name], f"{name}.toml"))
 
 
 @pytest.fixture(scope="session")

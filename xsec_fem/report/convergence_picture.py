@@ -17,7 +17,7 @@ if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
 _SIZE = (3.3, 3.1)  # of both panels [in]
-_LEFT, _BELOW, _GAP = 0.8, 0.55, 1.1
+_LEFT, _BELOW, _GAP = 0.95, 0.55, 1.1
 _BESIDE = 0.07  # distance of the slope triangle below the curve, as a share of the axis
 _ERROR, _INTERVAL = "#08519c", "#b2182b"
 
@@ -45,13 +45,15 @@ def convergence_figure(result: Result) -> Figure | None:
 
 def _draw_errors(axes: Axes, rows: Sequence[ConvergenceRow], accuracy: float) -> None:
     nodes, error = np.array([row.nodes for row in rows]), np.array([row.energy_error for row in rows])
-    axes.loglog(nodes, error, "o-", color=_ERROR, linewidth=1.3, markersize=4.5, zorder=4)
+    axes.set_xscale("log")
+    axes.set_yscale("log")
+    _room(axes, nodes, [*error, accuracy])
+    axes.plot(nodes, error, "o-", color=_ERROR, linewidth=1.3, markersize=4.5, zorder=4)
     axes.axhline(accuracy, color=INK, linewidth=0.8, linestyle=":")
     axes.annotate(
         f"asked for: {accuracy:g}", (1.0, accuracy), (-3, 3), xycoords=("axes fraction", "data"),
         textcoords="offset points", size=NOTE, ha="right", va="bottom", color=INK,
     )  # fmt: skip
-    _room(axes, nodes, [*error, accuracy])
     quiet_grid(axes)
     order = _whole_order(rows)
     if order is not None:
@@ -59,10 +61,13 @@ def _draw_errors(axes: Axes, rows: Sequence[ConvergenceRow], accuracy: float) ->
 
 
 def _room(axes: Axes, nodes: np.ndarray, values: Sequence[float]) -> None:
-    """Limits of both logarithmic axes with some room; plain numbers at the nodes of the meshes."""
-    from matplotlib.ticker import FixedLocator, FuncFormatter, NullLocator
+    """Limits of both logarithmic axes with some room; plain numbers on both."""
+    from matplotlib.ticker import FixedLocator, FuncFormatter, LogLocator, NullFormatter, NullLocator
 
     axes.set_xlim(nodes.min() / 1.3, nodes.max() * 1.3)
+    axes.yaxis.set_major_locator(LogLocator(subs=(1.0, 2.0, 5.0)))
+    axes.yaxis.set_major_formatter(FuncFormatter(lambda value, _: number(value, 2)))
+    axes.yaxis.set_minor_formatter(NullFormatter())
     low, high = min(values), max(values)
     room = max((high / low) ** 0.12, 1.25)
     axes.set_ylim(low / room, high * room)
@@ -99,7 +104,7 @@ def _slope_triangle(axes: Axes, nodes: np.ndarray, error: np.ndarray, order: flo
     axes.plot([x0, x1, x0, x0], [top, top * drop, top * drop, top], color=INK, linewidth=0.8, zorder=3)
     axes.annotate(
         f"observed\norder {order:.1f}", (x0, top * drop), (0, -4), textcoords="offset points", size=NOTE, color=INK,
-        va="top", zorder=3,
+        va="top", zorder=3, bbox={"boxstyle": "square,pad=0.1", "facecolor": "white", "edgecolor": "none"},
     )  # fmt: skip
 
 
@@ -109,12 +114,12 @@ def _draw_intervals(axes: Axes, rows: Sequence[ConvergenceRow]) -> None:
     nodes = np.array([row.nodes for row in rows])
     low, high = (np.array([row.IT_interval[side] for row in rows]) for side in (0, 1))
     axes.set_xscale("log")
+    axes.set_xlim(nodes.min() / 1.3, nodes.max() * 1.3)
     axes.fill_between(nodes, low, high, color=_INTERVAL, alpha=0.15, linewidth=0)
     axes.vlines(nodes, low, high, color=_INTERVAL, linewidth=1.4)
     for ends in (low, high):
         axes.plot(nodes, ends, "_", color=_INTERVAL, markersize=9, markeredgewidth=1.4)
     axes.plot(nodes, [row.IT for row in rows], "o", color=_INTERVAL, markersize=4.5)
-    axes.set_xlim(nodes.min() / 1.3, nodes.max() * 1.3)
     _node_ticks(axes, nodes, FixedLocator, FuncFormatter, NullLocator)
     span = float((high - low).max())
     digits = max(4, int(np.ceil(np.log10(float(high.max()) / span))) + 2) if span > 0 else 6

@@ -22,15 +22,18 @@ if TYPE_CHECKING:
 
 FloatArray = npt.NDArray[np.float64]
 
-_HEIGHT, _CHART = 4.6, 4.4  # of both panels, and the chart's width [in]
-_WIDEST, _NARROWEST = 4.2, 1.3  # of the section's panel [in]
+_CHART = 4.4  # width of the chart [in]
+_HIGHEST, _LOWEST = 4.6, 2.8  # of both panels [in]
+_WIDEST, _NARROWEST = 4.6, 1.3  # of the section's panel [in]
 _LEFT, _BELOW, _GAP, _KEY = (
     0.85,
     0.55,
     0.35,
     0.5,
 )  # room for labels, between the panels, and for the key above the chart
+_MARGIN = 0.3  # beside the section, both sides together [in]
 _ROOM = 0.04  # of the depth, above and below the section
+_NO_ROOM = 0.25  # share of the chart's width that a number on the left of a point needs
 _AXIS = 1e-9  # sine below which V lies along an axis
 FORMULA, MEAN, LARGEST, ACROSS = "#111111", "#8fbbe0", "#b2182b", "#e08214"
 
@@ -63,20 +66,23 @@ def depth_figure(result: Result, case: CaseResult, canvas: Canvas) -> Figure | N
     view = _View.of(sweep.crossings.normal)
     (left, low), (right, high) = _corners(view.turned(canvas.mesh.places))
     room = _ROOM * (high - low)
-    inches = _HEIGHT / (high - low + 2 * room)
-    natural = (right - left) * inches + 0.3
+    depth, across = high - low + 2 * room, right - left
+    height = min(_HIGHEST, max(_LOWEST, (_WIDEST - _MARGIN) / across * depth))
+    inches = height / depth
+    natural = across * inches + _MARGIN
     width = min(max(natural, _NARROWEST), _WIDEST)
+    squeezed = natural > _WIDEST * (1 + 1e-9)
     headings = [
         result.section.title or "Section",
         f"{case.name}: shear stress on straight cuts perpendicular to V, against the depth [{units.stress}]",
         actions_line(result, case),
     ]
-    panels = [(_LEFT, _BELOW, width, _HEIGHT), (_LEFT + width + _GAP, _BELOW, _CHART, _HEIGHT)]
-    spare = (panels[1][0], _BELOW + _HEIGHT, _CHART, _KEY)
+    panels = [(_LEFT, _BELOW, width, height), (_LEFT + width + _GAP, _BELOW, _CHART, height)]
+    spare = (panels[1][0], _BELOW + height, _CHART, _KEY)
     figure, (outline, chart, key) = panel_page(
-        [*panels, spare], headings, _notes(view, natural > _WIDEST, is_twisted(result, case))
+        [*panels, spare], headings, _notes(view, squeezed, is_twisted(result, case))
     )
-    half = width / 2 / inches if natural <= _WIDEST else (right - left) * 0.53
+    half = (right - left) * 0.53 if squeezed else width / 2 / inches
     middle = (left + right) / 2
     outline.set_xlim(middle - half, middle + half)
     for axes in (outline, chart):
@@ -122,7 +128,7 @@ def _draw_curves(axes: Axes, sweep: Sweep, view: _View) -> None:
     largest, formula = sweep.largest, sweep.elementary
     axes.axvline(0.0, color="#999999", linewidth=0.5)
     axes.plot(sweep.mean, depth, color=MEAN, linewidth=4.0, solid_capstyle="butt", label="field, mean over the cut")
-    axes.plot(formula, depth, color=FORMULA, linewidth=1.3, linestyle="--", label="V S/(I t)")
+    axes.plot(formula, depth, color=FORMULA, linewidth=1.3, linestyle="--", label="V S/(I t)", zorder=4)
     axes.plot(sweep.largest_across, depth, color=ACROSS, linewidth=1.0, label="field, largest component along V")
     axes.plot(largest, depth, color=LARGEST, linewidth=1.3, label="field, largest |τ|")
     top = float(np.nanmax(largest))
@@ -133,9 +139,11 @@ def _draw_curves(axes: Axes, sweep: Sweep, view: _View) -> None:
 
 
 def _write_extreme(axes: Axes, values: FloatArray, depth: FloatArray, colour: str, away: float) -> None:
-    """A point at the value of largest size, the value `away` points to the right of it (left when negative)."""
+    """A point at the value of largest size, the value `away` points to the right of it (left when negative and there is room)."""
     row = int(np.nanargmax(np.abs(values)))
     x, d = float(values[row]), float(depth[row])
+    if away < 0 and x < _NO_ROOM * axes.get_xlim()[1]:
+        away = -away
     axes.plot([x], [d], "o", color=colour, markersize=4, zorder=5)
     axes.annotate(
         number(x, 4), (x, d), (away, 0), textcoords="offset points", size=NOTE, color=colour, weight="bold", va="center",

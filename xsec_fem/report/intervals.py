@@ -7,7 +7,7 @@ from decimal import ROUND_CEILING, ROUND_FLOOR, ROUND_HALF_EVEN, Decimal
 
 _MOST_DIGITS = 6  # more are of no use on paper, however narrow the interval
 _NOISE = 1e-6  # share of `scale` below which digits are round-off of the mesh
-_PLAIN_FROM, _PLAIN_BELOW = -3, 6  # powers of ten written without an exponent
+_PLAIN_FROM, _PLAIN_BELOW = -4, 6  # powers of ten written without an exponent
 
 
 def certified(value: float, interval: tuple[float, float], scale: float = 0.0) -> tuple[str, str]:

@@ -133,7 +133,7 @@ def _colour_bar(sheet: Sheet, filled: Any, scale: RatioScale) -> None:
     bar.ax.yaxis.set_minor_locator(NullLocator())
     bar.ax.yaxis.set_major_formatter(FuncFormatter(lambda value, _: number(value, 3)))
     bar.ax.tick_params(labelsize=NOTE, colors=INK, width=0.6, length=3)
-    bar.set_label("|τ| by elasticity over V S/(I t) [-], steps on a log scale", size=SUBTITLE, color=INK)
+    bar.set_label("ratio [-], steps on a log scale", size=SUBTITLE, color=INK)
     bar.outline.set_linewidth(0.5)
 
 
