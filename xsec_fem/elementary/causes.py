@@ -144,8 +144,8 @@ def _corner(place: _Place) -> Cause | None:
 def _layers(place: _Place) -> Cause | None:
     mesh, G = place.comparison.solved.mesh, place.comparison.solved.warping.problem.moduli.G
     names = place.crossings.parts_of_span(place.span)
-    sizes = [float(np.linalg.norm(G[mesh.part_names.index(name)])) for name in names]
-    if max(sizes) - min(sizes) <= _OTHER_G * max(sizes):
+    tensors = np.array([G[mesh.part_names.index(name)] for name in names])
+    if np.ptp(tensors, axis=0).max() <= _OTHER_G * np.abs(tensors).max():
         return None
     listed = ", ".join(f'"{name}"' for name in names)
     return Cause(

@@ -21,7 +21,9 @@ from xsec_fem.fem.polynomial_roots import evaluate, turning_points
 FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
 
-_STRAIGHT = 1e-12  # inner nodes this share of the edge away from its chord's even division are round-off
+_STRAIGHT = (
+    1e-12  # inner nodes this share of the chord, or of the largest coordinate, off an even division are round-off
+)
 
 
 def tangent_of(normal: FloatArray) -> FloatArray:

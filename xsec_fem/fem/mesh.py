@@ -27,6 +27,7 @@ from xsec_fem.fem.reference_triangle import LagrangeTriangle, lagrange_triangle,
 FloatArray = npt.NDArray[np.float64]
 IntArray = npt.NDArray[np.int64]
 
+_DIGITS = 16 * np.finfo(float).eps  # positions of side nodes carry a few roundings of their coordinates
 _STRAIGHT = 1e-10  # an edge node farther from the chord's even division than this share of the element is a curve's
 
 
@@ -124,8 +125,9 @@ class Mesh:
         corner = self.nodes[self.triangles[:, :3]]
         straight = lagrange_triangle(1).values(self.element.nodes)
         size = np.linalg.norm(corner[:, 1] - corner[:, 0], axis=1) + np.linalg.norm(corner[:, 2] - corner[:, 0], axis=1)
+        round_off = _DIGITS * np.abs(self.nodes).max()  # of coordinates far from the origin
         off = np.abs(self.nodes[self.triangles] - np.einsum("qk,mkd->mqd", straight, corner)).max(axis=(1, 2))
-        result: npt.NDArray[np.bool_] = off > _STRAIGHT * size
+        result: npt.NDArray[np.bool_] = off > np.maximum(_STRAIGHT * size, round_off)
         return result
 
     @cached_property

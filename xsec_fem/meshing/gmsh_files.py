@@ -77,7 +77,7 @@ def read_msh(path: Path) -> FileMesh:
         number_of[np.asarray(tags, np.int64)] = np.arange(len(tags))
         triangles = number_of[np.asarray(node_tags[0], np.int64)].reshape(-1, _TRIANGLES[int(types[0])])
         nodes = np.asarray(places, float).reshape(-1, 3)
-        _, starts = _surface_counts(gmsh, int(types[0]))
+        starts = _surface_ranges(gmsh, int(types[0]))
         regions = tuple(
             Region(
                 int(number),
@@ -110,14 +110,14 @@ def _physical_surfaces(gmsh: Any) -> list[tuple[int, list[int]]]:
     return [(number, [int(t) for t in gmsh.model.getEntitiesForPhysicalGroup(2, number)]) for number in groups]
 
 
-def _surface_counts(gmsh: Any, element: int) -> tuple[int, dict[int, tuple[int, int]]]:
-    """Number of triangles, and for each surface the range of its triangles in the list of all."""
+def _surface_ranges(gmsh: Any, element: int) -> dict[int, tuple[int, int]]:
+    """For each surface the range of its triangles in the list of all."""
     starts, total = {}, 0
     for _, tag in gmsh.model.getEntities(2):
         count = len(gmsh.model.mesh.getElementsByType(element, tag)[0])
         starts[int(tag)] = (total, total + count)
         total += count
-    return total, starts
+    return starts
 
 
 def _require_last_line(path: Path) -> None:

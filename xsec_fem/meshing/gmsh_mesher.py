@@ -53,7 +53,8 @@ def mesh_section(
             if not len(bad) or attempt == _RETRIES:
                 break
             field = _finer(nodes, triangles, bad, field)
-    return Mesh.build(nodes, triangles, part_of, geometry.part_names, source=f"drawn parts, order {order}, gmsh")
+    origin = "drawn parts" if all(part.face is not None for part in section.parts) else "a geometry script"
+    return Mesh.build(nodes, triangles, part_of, geometry.part_names, source=f"{origin}, order {order}, gmsh")
 
 
 def _generate(

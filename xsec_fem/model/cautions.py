@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from xsec_fem.model.faults import FaultList
 from xsec_fem.model.material_reader import material_place
-from xsec_fem.model.placement import extent
 from xsec_fem.model.section import Material, Section
 from xsec_fem.model.wording import number_text, quoted
 from xsec_fem.units import UnitSystem
@@ -63,7 +62,7 @@ def _check_shear_modulus(material: Material, units: UnitSystem, faults: FaultLis
 
 
 def _check_size(section: Section, faults: FaultList) -> None:
-    boxes = [extent(part.face.outer) for part in section.parts if part.face is not None]
+    boxes = [part.face.bounds() for part in section.parts if part.face is not None]
     if not boxes:
         return
     width = max(box[2] for box in boxes) - min(box[0] for box in boxes)

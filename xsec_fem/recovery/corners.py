@@ -40,6 +40,7 @@ class Corner:
     distance : stresses nearer than this to the corner are not reported as stresses [mm].
     sectors : the materials around it, counter-clockwise.
     part : index of the first part in the mesh.
+    inside : True when material goes all round the point, bonded; False at a slit's tip.
     """
 
     y: float
@@ -51,11 +52,7 @@ class Corner:
     distance: float
     sectors: tuple[Sector, ...]
     part: int
-
-    @property
-    def inside(self) -> bool:
-        """True when material goes all round the point."""
-        return self.angle_deg > 359.999 and len(self.sectors) > 1
+    inside: bool = False
 
     @property
     def directions(self) -> tuple[float, float]:
@@ -163,7 +160,8 @@ def _inner_corners(
         exponent = closed_wedge_exponent(sectors) - 1.0
         if exponent <= _WEAKEST:
             wall = _smallest_part(mesh, parts)
-            yield _corner(mesh, mesh.nodes[node], exponent, parts, wall, sectors, int(mesh.part_of[fan[0][0]]))
+            corner = _corner(mesh, mesh.nodes[node], exponent, parts, wall, sectors, int(mesh.part_of[fan[0][0]]))
+            yield replace(corner, inside=True)
 
 
 def _inner_candidates(mesh: Mesh, edges: Edges, G: FloatArray, angles: FloatArray) -> IntArray:

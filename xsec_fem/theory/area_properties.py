@@ -19,6 +19,10 @@ from xsec_fem.theory.moduli import Moduli
 FloatArray = npt.NDArray[np.float64]
 
 
+_EQUAL = 1e-9  # principal moments closer than this share are equal: an angle from their difference would be noise
+_ROUND_OFF = 1e-12  # products of inertia below this share of the moments are the rounding of the sum
+
+
 @dataclass(frozen=True)
 class AreaProperties:
     """Integrals over the section.
@@ -60,10 +64,10 @@ class AreaProperties:
         """
         half_sum, half_difference = (self.EIyy + self.EIzz) / 2, (self.EIyy - self.EIzz) / 2
         radius = float(np.hypot(half_difference, self.EIyz))
-        if radius <= 1e-9 * half_sum:
+        if radius <= _EQUAL * half_sum:
             return 0.0, half_sum, half_sum
         # bending about the axis at angle a has ∫E (z cos a - y sin a)² = half_sum + radius cos(2 (a - alpha))
-        shear = 0.0 if abs(self.EIyz) <= 1e-12 * half_sum else self.EIyz
+        shear = 0.0 if abs(self.EIyz) <= _ROUND_OFF * half_sum else self.EIyz
         alpha = float(np.degrees(np.arctan2(-shear, half_difference)) / 2)
         return alpha if alpha > -90.0 else 90.0, half_sum + radius, half_sum - radius
 

@@ -15,10 +15,16 @@ def rotated_tensor(first: float, second: float, degrees: float) -> FloatArray:
 
     The unit is that of the two values, MPa for shear moduli. Source: Sokolnikoff 1956 (change of axes of a tensor of second order).
     """
+    quarters, rest = divmod(degrees, 90.0)
+    if rest == 0.0 or first == second:  # exact, so that equal materials stay equal
+        return np.diag([second, first] if quarters % 2 and first != second else [first, second]).astype(np.float64)
     c, s = np.cos(np.radians(degrees)), np.sin(np.radians(degrees))
     turn = np.array([[c, -s], [s, c]])
     tensor: FloatArray = turn @ np.diag([first, second]) @ turn.T
     return tensor
+
+
+_SAME_NU = 1e-12  # typed values differ by more; turned tensors differ by round-off
 
 
 @dataclass(frozen=True)
@@ -65,4 +71,4 @@ class Moduli:
     @property
     def equal_nu(self) -> bool:
         """True when all parts have the same nu tensor: then the theory is exact also for layered sections."""
-        return bool(np.allclose(self.nu, self.nu[0], rtol=0.0, atol=1e-12))
+        return bool(np.allclose(self.nu, self.nu[0], rtol=0.0, atol=_SAME_NU))
