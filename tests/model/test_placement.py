@@ -111,7 +111,7 @@ def test_the_extent_of_an_arc_reaches_beyond_its_ends():
     assert cap.bounds() == pytest.approx((start[0], start[1], end[0], 1), abs=1e-15)
     dent = Loop((Line(start, end), Arc(end, start, (0, 2 * start[1]), ccw=False)))  # hollow below, about a centre above
     assert dent.bounds()[1] == pytest.approx(2 * start[1] - 1, abs=1e-15)
-    assert extent(circle_loop(0.3)) == (-0.3, -0.3, 0.3, 0.3)
+    assert circle_loop(0.3).bounds() == (-0.3, -0.3, 0.3, 0.3)
 
 
 @given(turn=st.floats(0, 360), ratio=st.floats(0.05, 1))
@@ -123,7 +123,7 @@ def test_the_extent_of_a_turned_ellipse_is_that_of_its_formula(turn, ratio):
     c, s = math.cos(math.radians(turn)), math.sin(math.radians(turn))
     y, z = math.hypot(c, ratio * s), math.hypot(s, ratio * c)
     # 1e-9: a tip nearer to an arc's end than 1e-9 of its size is taken as that end, far less than that away across
-    assert extent(Loop(arcs).moved(Isometry.rotation(turn))) == pytest.approx((-y, -z, y, z), abs=1e-9)
+    assert Loop(arcs).moved(Isometry.rotation(turn)).bounds() == pytest.approx((-y, -z, y, z), abs=1e-9)
 
 
 @pytest.mark.parametrize(
