@@ -53,7 +53,7 @@ def run(args: argparse.Namespace) -> int:
     codes, documents = [FINE], []
     for file, folder in zip(args.files, output_folders([Path(file) for file in args.files], args.out), strict=True):
         try:
-            code, document = _compare_file(file, folder, args, first=len(codes) == 1)
+            code, document = _compare_file(file, folder, args, first=not documents)
         except XsecError as error:
             codes.append(report_error(error, file))
             continue
