@@ -8,7 +8,7 @@ from html import escape
 from pathlib import Path
 
 from .case import Record
-from .table import HEADER, by_group, heading, row_cells, summary_line
+from .table import HEADER, MARKS, by_group, heading, row_cells, summary_line
 
 _STYLE = """
 body { font: 14px/1.45 system-ui, "DejaVu Sans", sans-serif; color: #222; margin: 2em auto; max-width: 1240px; padding: 0 1em; }
@@ -36,7 +36,7 @@ def page(records: Sequence[Record], pictures: Sequence[Path]) -> str:
     )
     body = [
         "<h1>Validation</h1>",
-        f"<p>{escape(summary_line(records))}</p>",
+        f"<p>{escape(summary_line(records))} {escape(MARKS)}</p>",
         f"<ul>{misses}</ul>" if misses else "",
         f"<nav>{links}</nav>",
         *(_picture(file) for file in pictures),

@@ -12,6 +12,7 @@ from .case import Record
 
 HEADER = ("", "section", "quantity", "reference", "ours", "guaranteed interval", "difference", "allowed", "source")
 ALIGN = "lllrrlrrl"
+MARKS = "Differences are shares of the reference, or in the quantity's unit where marked u."
 _DIGITS = 9
 _INTERVAL_DIGITS = 10
 
@@ -33,7 +34,7 @@ def blocks(records: Sequence[Record]) -> list[Block]:
     misses = [f"{record.case_id}: {record.message}" for record in records if not record.ok]
     if misses:
         content += [Heading("Misses"), Lines(tuple(misses))]
-    return [*content, Heading("Summary"), Lines((summary_line(records),))]
+    return [*content, Heading("Summary"), Lines((MARKS, summary_line(records)))]
 
 
 def heading(group: str) -> str:
@@ -88,4 +89,4 @@ def document(records: Sequence[Record]) -> str:
 
 
 def _size(value: float, record: Record) -> str:
-    return f"{value / record.scale:.1e}" if record.scale else f"{value:.1e}"
+    return f"{value / (record.scale or 1.0):.1e}{'' if record.relative else ' u'}"
