@@ -50,7 +50,8 @@ def run(args: argparse.Namespace) -> int:
     """Compare every file and return the worst exit code; strength is not looked at."""
     if args.good >= args.care:
         raise InputError([Fault("", "--good", f"must be below --care, {args.care:g}", f"{args.good:g}")])
-    codes, documents = [FINE], []
+    codes = [FINE]
+    documents: list[dict[str, Any]] = []
     for file, folder in zip(args.files, output_folders([Path(file) for file in args.files], args.out), strict=True):
         try:
             code, document = _compare_file(file, folder, args, first=not documents)

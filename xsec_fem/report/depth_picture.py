@@ -58,50 +58,69 @@ class _View:
         return np.column_stack([places @ [self.up[1], -self.up[0]], places @ self.up])
 
 
+@dataclass(frozen=True)
+class _Outline:
+    """How the section goes into its panel: height and width [in], limits across V and along it [mm], whether it is squeezed."""
+
+    height: float
+    width: float
+    across: tuple[float, float]
+    along: tuple[float, float]
+    squeezed: bool
+
+    @classmethod
+    def of(cls, places: FloatArray) -> _Outline:
+        """Both to one scale, as high as the width allows; a section wider than that is squeezed. places (n, 2) turned [mm]."""
+        (left, low), (right, high) = places.min(axis=0).tolist(), places.max(axis=0).tolist()
+        room = _ROOM * (high - low)
+        depth, across = high - low + 2 * room, right - left
+        height = min(_HIGHEST, max(_LOWEST, (_WIDEST - _MARGIN) / across * depth))
+        natural = across * height / depth + _MARGIN
+        width = min(max(natural, _NARROWEST), _WIDEST)
+        squeezed = natural > _WIDEST * (1 + 1e-9)  # round-off when the height was chosen to fit
+        half = (across * 1.06 if squeezed else width * depth / height) / 2
+        middle = (left + right) / 2
+        return cls(height, width, (middle - half, middle + half), (low - room, high + room), squeezed)
+
+
 def depth_figure(result: Result, case: CaseResult, canvas: Canvas) -> Figure | None:
     """Return the chart of one case, 150 dpi, stresses and lengths in the file's units; None in a case without shear."""
     if case.comparison is None:
         return None
     units, sweep = result.section.units, case.comparison.sweep
     view = _View.of(sweep.crossings.normal)
-    (left, low), (right, high) = _corners(view.turned(canvas.mesh.places))
-    room = _ROOM * (high - low)
-    depth, across = high - low + 2 * room, right - left
-    height = min(_HIGHEST, max(_LOWEST, (_WIDEST - _MARGIN) / across * depth))
-    inches = height / depth
-    natural = across * inches + _MARGIN
-    width = min(max(natural, _NARROWEST), _WIDEST)
-    squeezed = natural > _WIDEST * (1 + 1e-9)
+    shape = _Outline.of(view.turned(canvas.mesh.places))
     headings = [
         result.section.title or "Section",
         f"{case.name}: shear stress on straight cuts perpendicular to V, against the depth [{units.stress}]",
         actions_line(result, case),
     ]
-    panels = [(_LEFT, _BELOW, width, height), (_LEFT + width + _GAP, _BELOW, _CHART, height)]
-    spare = (panels[1][0], _BELOW + height, _CHART, _KEY)
-    figure, (outline, chart, key) = panel_page(
-        [*panels, spare], headings, _notes(view, squeezed, is_twisted(result, case))
-    )
-    half = (right - left) * 0.53 if squeezed else width / 2 / inches
-    middle = (left + right) / 2
-    outline.set_xlim(middle - half, middle + half)
+    right, top = _LEFT + shape.width + _GAP, _BELOW + shape.height
+    panels = [
+        (_LEFT, _BELOW, shape.width, shape.height),
+        (right, _BELOW, _CHART, shape.height),
+        (right, top, _CHART, _KEY),
+    ]
+    notes = _notes(view, shape.squeezed, is_twisted(result, case))
+    figure, (outline, chart, key) = panel_page(panels, headings, notes)
+    outline.set_xlim(shape.across)
     for axes in (outline, chart):
-        axes.set_ylim(low - room, high + room)
+        axes.set_ylim(shape.along)
     _draw_outline(outline, canvas, view, case)
     name_axes(outline, f"{'y' if view.name == 'z' else 'across V'} [{units.length}]", f"{view.name} [{units.length}]")
     _draw_curves(chart, sweep, view)
     name_axes(chart, f"shear stress [{units.stress}]", "")
     chart.tick_params(labelleft=False)
-    key.set_axis_off()
-    key.legend(
-        *chart.get_legend_handles_labels(), ncols=2, loc="lower left", fontsize=NOTE, frameon=False, borderaxespad=0.0,
-        bbox_to_anchor=(0.0, 0.08), handlelength=2.2, columnspacing=1.2,
-    )  # fmt: skip
+    _draw_key(key, chart)
     return figure
 
 
-def _corners(places: FloatArray) -> list[list[float]]:
-    return [places.min(axis=0).tolist(), places.max(axis=0).tolist()]
+def _draw_key(axes: Axes, chart: Axes) -> None:
+    axes.set_axis_off()
+    axes.legend(
+        *chart.get_legend_handles_labels(), ncols=2, loc="lower left", fontsize=NOTE, frameon=False, borderaxespad=0.0,
+        bbox_to_anchor=(0.0, 0.08), handlelength=2.2, columnspacing=1.2,
+    )  # fmt: skip
 
 
 def _draw_outline(axes: Axes, canvas: Canvas, view: _View, case: CaseResult) -> None:

@@ -11,11 +11,11 @@ import numpy.typing as npt
 from xsec_fem.model.outline import Point
 from xsec_fem.model.section import Section
 from xsec_fem.recovery.joint_results import JointResult
+from xsec_fem.report.joint_charts import draw_joint_chart
 from xsec_fem.report.joint_profiles import along, chained
-from xsec_fem.report.numbers import number
-from xsec_fem.report.panels import name_axes, panel_page, quiet_grid
+from xsec_fem.report.panels import name_axes, panel_page
 from xsec_fem.report.section_canvas import Canvas, actions_line, fill_parts
-from xsec_fem.report.sheet import INK, NOTE, SUBTITLE, Box
+from xsec_fem.report.sheet import NOTE, Box
 from xsec_fem.results import CaseResult, Result
 
 if TYPE_CHECKING:
@@ -62,8 +62,8 @@ def joints_figure(result: Result, case: CaseResult, canvas: Canvas) -> Figure | 
     figure, (drawing, *charts) = panel_page(panels, headings, _notes(case, shown))
     _draw_section(drawing, canvas, box, (size[0] / inches, height / inches), units.length)
     _draw_joints(drawing, result.section, shown, inches, box)
-    for axes, (joint, colour, place) in zip(charts, ((j, _colour(k), k + 1) for k, j in enumerate(shown)), strict=True):
-        _draw_chart(axes, result, joint, colour, place)
+    for k, (axes, joint) in enumerate(zip(charts, shown, strict=True)):
+        draw_joint_chart(axes, joint, units, _colour(k), k + 1)
     return figure
 
 
@@ -146,73 +146,6 @@ def _label(axes: Axes, k: int, points: FloatArray, taken: list[Point], inches: f
         y, z, str(k + 1), size=NOTE, color="white", weight="bold", ha="center", va="center", zorder=8,
         bbox={"boxstyle": "circle,pad=0.25", "facecolor": _colour(k), "edgecolor": "white", "linewidth": 0.6},
     )  # fmt: skip
-
-
-def _draw_chart(axes: Axes, result: Result, joint: JointResult, colour: str, place: int) -> None:
-    units = result.section.units
-    labels = _bond_labels(joint) if joint.profiles else []
-    title = f"{place}  {joint.name}: {number(joint.flow, 4)} {units.flow}"
-    axes.set_title(title, size=SUBTITLE, color=colour, loc="left", parse_math=False, pad=15.0 if labels else 6.0)
-    quiet_grid(axes)
-    if joint.kind == "fasteners":
-        _draw_rows(axes, joint, colour)
-        name_axes(axes, "", f"flow [{units.flow}]")
-        return
-    for k, profile in enumerate(joint.profiles):
-        start = (joint.bonds[k].root_distance or 0.0) if joint.bonds else 0.0
-        for number_, (places, across) in enumerate(chained(profile)):
-            axes.plot(
-                along(places) + start, across, color=colour, linewidth=1.3, linestyle=("-", "--", ":", "-.")[k % 4],
-                label=labels[k] if labels and not number_ else None,
-            )  # fmt: skip
-    if joint.mean is not None and not joint.bonds:
-        axes.axhline(joint.mean, color=INK, linewidth=0.8, linestyle="--")
-        words = f"mean {number(joint.mean, 4)}, peak {number(joint.peak or 0.0, 4)} {units.stress}"
-        axes.text(0.5, 0.45, words, size=NOTE, color=INK, ha="center", va="center", transform=axes.transAxes)
-    _from_zero(axes)
-    if labels:
-        axes.legend(
-            fontsize=NOTE - 1, frameon=False, loc="lower left", ncols=2, handlelength=1.6, bbox_to_anchor=(0.0, 1.05),
-            borderaxespad=0.0, borderpad=0.0,
-        )  # fmt: skip
-    from_where = "from the root" if joint.bonds else "along the line"
-    name_axes(axes, f"{from_where} [{units.length}]", f"τ across [{units.stress}]")
-
-
-def _bond_labels(joint: JointResult) -> list[str]:
-    return [bond.name + ("" if bond.share is None else f": {100 * bond.share:.1f} %") for bond in joint.bonds]
-
-
-def _from_zero(axes: Axes) -> None:
-    """Zero on the axis, so that how even a stress is can be seen."""
-    from matplotlib.ticker import MaxNLocator
-
-    low, high = axes.get_ylim()
-    low, high = min(low, 0.0), max(high, 0.0)
-    axes.set_ylim(low * 1.1, high * 1.1)
-    axes.yaxis.set_major_locator(MaxNLocator(4))
-    axes.xaxis.set_major_locator(MaxNLocator(5))
-
-
-def _draw_rows(axes: Axes, joint: JointResult, colour: str) -> None:
-    """One bar a row with its share."""
-    from matplotlib.ticker import MaxNLocator
-
-    places = np.arange(len(joint.bonds))
-    flows = [bond.flow for bond in joint.bonds]
-    axes.bar(places, flows, width=0.55, color=colour, alpha=0.75)
-    axes.set_xticks(places, [bond.name for bond in joint.bonds])
-    low, high = min(0.0, *flows), max(0.0, *flows)
-    axes.set_ylim(low * 1.3, high * 1.3)
-    axes.yaxis.set_major_locator(MaxNLocator(4))
-    axes.set_xlim(-0.6, len(places) - 0.4)
-    axes.axhline(0.0, color="#999999", linewidth=0.5)
-    for x, bond in zip(places.tolist(), joint.bonds, strict=True):
-        share = "" if bond.share is None else f" ({100 * bond.share:.1f} %)"
-        axes.annotate(
-            number(bond.flow, 4) + share, (x, bond.flow), (0, 2 if bond.flow >= 0 else -2), textcoords="offset points",
-            size=NOTE - 1, ha="center", va="bottom" if bond.flow >= 0 else "top", color=INK,
-        )  # fmt: skip
 
 
 def _notes(case: CaseResult, shown: Sequence[JointResult]) -> list[str]:
