@@ -99,7 +99,7 @@ def _constants(name: str) -> Iterator[Case]:
                     nu,
                     _area_over(f"As{axis}"),
                     reference,
-                    energy(error, 2),
+                    energy(error),
                     _area_over_bounds(f"As{axis}"),
                 )
         if flexibility[2]:

@@ -96,7 +96,7 @@ def _ellipses() -> list[Case]:
                     Iw,
                     SAINT_VENANT,
                     "computed",
-                    curved(10),
+                    curved(),
                     "mm⁶",
                 )
             )
