@@ -11,20 +11,20 @@ from xsec_fem.report.blocks import plain_text
 from xsec_fem.report.intervals import certified
 from xsec_fem.report.property_table import properties_table
 from xsec_fem.report.summary import summary
-from xsec_fem.report.trust_blocks import accuracy_blocks, convergence_blocks, percent
+from xsec_fem.report.trust_blocks import accuracy_blocks, at_most, convergence_blocks, percent
 from xsec_fem.results import Caution
 
 
 def test_errors_strictness_and_meshes_are_told(solved):
     result = solved("sharp")
     text = plain_text(accuracy_blocks(result))
-    errors = ", ".join(f"{name} {percent(result.certificate.energy_error[name])}" for name in ("Vy", "Vz", "T"))
+    errors = ", ".join(f"{name} {at_most(result.certificate.energy_error[name])}" for name in ("Vy", "Vz", "T"))
     assert text == (
         "Guaranteed accuracy\n"
         f"  energy error of the stress field at most: {errors}\n"
         "  the intervals beside the constants are strict: nothing but round-off is left out\n"
         f"  solved on {len(result.mesh_steps)} meshes of {', '.join(str(step.nodes) for step in result.mesh_steps)} nodes: "
-        f"largest of the three {', '.join(percent(step.energy_error) for step in result.mesh_steps)} (asked for: 1 %)\n"
+        f"largest of the three {', '.join(at_most(step.energy_error) for step in result.mesh_steps)} (asked for: 1 %)\n"
     )
     assert len(result.mesh_steps) > 1
 
@@ -81,8 +81,25 @@ def test_the_convergence_table(solved):
     for row, line in zip(rows, table[1:6], strict=True):
         cells = line.split("  ")
         assert [cell.strip() for cell in cells if cell.strip()][:4] == [
-            str(row.degree), str(row.nodes), str(row.elements), percent(row.energy_error),
+            str(row.degree), str(row.nodes), str(row.elements), at_most(row.energy_error),
         ]  # fmt: skip
         assert certified(row.IT, row.IT_interval)[1] in line
     assert table[1].split()[5] == "-"
     assert table[6].strip().startswith("Order: -2 d log(error)/d log(nodes)")
+
+
+@pytest.mark.parametrize(
+    ("share", "text"),
+    [
+        (0.01004, "1.01 %"),
+        (0.01, "1 %"),
+        (0.0048301, "0.484 %"),
+        (0.2, "20 %"),
+        (3.1e-7, "3.1e-5 %"),
+        (0.0, "0 %"),
+        (0.9999, "100 %"),
+    ],
+)
+def test_bounds_are_rounded_up(share, text):
+    assert at_most(share) == text
+    assert percent(0.01004) == "1 %"

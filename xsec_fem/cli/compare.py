@@ -76,7 +76,7 @@ def _compare_file(file: str, folder: Path, args: argparse.Namespace, first: bool
     with writing_to(folder):
         if not args.no_pictures:
             try:
-                pictures = write_comparison_pictures(result, folder, args.svg)
+                pictures = write_comparison_pictures(result, folder, args.svg, two_processes=True)
             except MissingLibraryError as error:
                 code = report_error(error, file)
         result, tables = write_sweeps(result, folder, every=True)

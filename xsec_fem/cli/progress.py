@@ -5,7 +5,7 @@ from __future__ import annotations
 import sys
 from collections.abc import Callable
 
-from xsec_fem.report.trust_blocks import percent
+from xsec_fem.report.trust_blocks import at_most, percent
 from xsec_fem.results import MeshStep
 
 
@@ -27,7 +27,7 @@ def step_printer(accuracy: float, quiet: bool) -> Callable[[MeshStep], None] | N
 def step_line(step: MeshStep, accuracy: float) -> str:
     """Return one mesh as a line: nodes, the largest bound of the energy errors, what was asked for."""
     enough = step.energy_error <= accuracy
-    error, asked = percent(step.energy_error), percent(accuracy)
+    error, asked = at_most(step.energy_error), percent(accuracy)
     return (
         f"mesh of {step.nodes} nodes: energy error at most {error}, asked for {asked}{'' if enough else ': refining'}"
     )

@@ -10,6 +10,7 @@ import numpy as np
 from xsec_fem.report.numbers import number
 from xsec_fem.report.panels import name_axes, panel_page, quiet_grid
 from xsec_fem.report.sheet import INK, NOTE
+from xsec_fem.report.trust_blocks import at_most
 from xsec_fem.results import ConvergenceRow, Result
 
 if TYPE_CHECKING:
@@ -138,4 +139,4 @@ def _notes(result: Result) -> list[str]:
     certificate = result.certificate
     if certificate is not None and not certificate.strict:
         notes.append(f"Not strict: {certificate.reason}.")
-    return [*notes, f"Last mesh: {last.nodes} nodes, energy error at most {number(100 * last.energy_error, 3)} %."]
+    return [*notes, f"Last mesh: {last.nodes} nodes, energy error at most {at_most(last.energy_error)}."]

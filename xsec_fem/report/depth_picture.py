@@ -151,7 +151,7 @@ def _draw_curves(axes: Axes, sweep: Sweep, view: _View) -> None:
     axes.plot(sweep.largest_across, depth, color=ACROSS, linewidth=1.0, label="field, largest component along V")
     axes.plot(largest, depth, color=LARGEST, linewidth=1.3, label="field, largest |τ|")
     top = float(np.nanmax(largest))
-    axes.set_xlim(min(0.0, float(np.nanmin(formula)), float(np.nanmin(sweep.mean))) - 0.02 * top, 1.16 * top)
+    axes.set_xlim(min(0.0, float(np.nanmin(formula)), float(np.nanmin(sweep.mean))) - 0.02 * top, 1.22 * top)
     quiet_grid(axes)
     _write_extreme(axes, largest, depth, LARGEST, 6)
     _write_extreme(axes, formula, depth, FORMULA, -6)

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from decimal import ROUND_CEILING, Decimal
+
 from xsec_fem.report.blocks import Block, Heading, Lines, Table
 from xsec_fem.report.intervals import certified
 from xsec_fem.report.numbers import number
@@ -13,6 +15,13 @@ def percent(share: float) -> str:
     return f"{number(100 * share, 3)} %"
 
 
+def at_most(share: float) -> str:
+    """Return a bound as "0.121 %", its third digit rounded up so that it stays a bound [-]."""
+    value = 100 * Decimal(repr(float(share)))
+    last = Decimal(1).scaleb(value.adjusted() - 2)
+    return f"{number(float(value.quantize(last, ROUND_CEILING)), 3)} %"
+
+
 def accuracy_blocks(result: Result) -> list[Block]:
     """Return the energy errors, whether the intervals are strict and why not, and the meshes solved (nodes)."""
     heading = Heading("Guaranteed accuracy")
@@ -21,7 +30,7 @@ def accuracy_blocks(result: Result) -> list[Block]:
         failed = any(caution.code == "no certificate" for caution in result.warnings)
         why = "see the warnings" if failed else "bounds were not asked for, and the mesh was not refined"
         return [heading, Lines((f"none: {why}",))]
-    errors = ", ".join(f"{name} {percent(error)}" for name, error in certificate.energy_error.items())
+    errors = ", ".join(f"{name} {at_most(error)}" for name, error in certificate.energy_error.items())
     intervals = (
         "the intervals beside the constants are strict: nothing but round-off is left out"
         if certificate.strict
@@ -36,7 +45,7 @@ def _meshes(result: Result) -> str:
         return f"accuracy asked for: {asked}"
     nodes = ", ".join(str(step.nodes) for step in steps)
     count = f"{len(steps)} meshes of" if len(steps) > 1 else "1 mesh of"
-    errors = ", ".join(percent(step.energy_error) for step in steps)
+    errors = ", ".join(at_most(step.energy_error) for step in steps)
     return f"solved on {count} {nodes} nodes: largest of the three {errors} (asked for: {asked})"
 
 
@@ -51,7 +60,7 @@ def convergence_blocks(result: Result) -> list[Block]:
     )  # fmt: skip
     rows = tuple(
         (
-            str(row.degree), str(row.nodes), str(row.elements), percent(row.energy_error),
+            str(row.degree), str(row.nodes), str(row.elements), at_most(row.energy_error),
             "-" if row.observed_order is None else f"{row.observed_order:.2f}",
             *certified(row.IT, row.IT_interval), *certified(row.Asz, row.Asz_interval),
         )
