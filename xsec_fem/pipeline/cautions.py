@@ -74,9 +74,15 @@ def _accuracy(evidence: Evidence) -> Iterator[Caution]:
         why = f"the mesh already has {len(solution.mesh.nodes)} nodes" if drawn else "a mesh from a file is not refined"
         yield Caution(
             "accuracy",
-            f"The guaranteed energy error is {solution.energy_error:.2g}, above the {wanted:g} asked for: {why}. The intervals "
+            f"The guaranteed energy error is {_rounded_up(solution.energy_error):.2g}, above the {wanted:g} asked for: {why}. The intervals "
             "printed beside the constants hold all the same.",
         )
+
+
+def _rounded_up(bound: float) -> float:
+    """A bound with two digits, rounded so that it stays one [-]."""
+    step = 10.0 ** (math.floor(math.log10(bound)) - 1)
+    return math.ceil(bound / step) * step
 
 
 def _load_points(evidence: Evidence) -> Iterator[Caution]:
