@@ -74,7 +74,8 @@ def _accuracy(evidence: Evidence) -> Iterator[Caution]:
         why = f"the mesh already has {len(solution.mesh.nodes)} nodes" if drawn else "a mesh from a file is not refined"
         yield Caution(
             "accuracy",
-            f"The guaranteed energy error is {_rounded_up(solution.energy_error):.2g}, above the {wanted:g} asked for: {why}. The intervals "
+            f"The guaranteed energy error is {_rounded_up(solution.energy_error):.2g}, above the {wanted:g} asked for: {why}. "
+            "The intervals "
             "printed beside the constants hold all the same.",
         )
 
