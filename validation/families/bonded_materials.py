@@ -155,6 +155,8 @@ def _layers(nu: float) -> list[Case]:
     exact = LayeredFlexure(np.array([0.0, 1.0, 1.5]), np.array([1.0, 10.0]), 2.0, nu)
     z = exact.centroid
     found = [
+        # over the modulus of the part with the larger EA, the upper one
+        family.case("A", constant("A"), (2.0 * 1.0 + 1.0 * 10.0) / 10.0, _MOMENT, _TEXT, unit="mm²"),
         family.case("zc", constant("zc"), z, _MOMENT, _TEXT, unit="mm"),
         family.case("EIyy", constant("EIyy"), exact.EI, _MOMENT, _TEXT, unit="N mm²"),
         family.case("shear flexibility", shear_flexibility, exact.flexibility, _CONSTANT, unit="1/N",
