@@ -13,6 +13,7 @@ from .case import Record
 HEADER = ("", "section", "quantity", "reference", "ours", "guaranteed interval", "difference", "allowed", "source")
 ALIGN = "lllrrlrrl"
 MARKS = "Differences are shares of the reference, or in the quantity's unit where marked u."
+_INTERVAL = HEADER.index("guaranteed interval")
 _DIGITS = 9
 _INTERVAL_DIGITS = 10
 
@@ -25,12 +26,20 @@ def by_group(records: Iterable[Record]) -> list[tuple[str, list[Record]]]:
     return list(order.items())
 
 
-def blocks(records: Sequence[Record]) -> list[Block]:
-    """Return one table a group, the misses in words, and the summary line at the end."""
+def blocks(records: Sequence[Record], narrow: bool = False) -> list[Block]:
+    """Return one table a group, the sources, the misses in words, and the summary line at the end.
+
+    A narrow table leaves the guaranteed intervals out.
+    """
+    numbers = {source: number for number, source in enumerate(dict.fromkeys(record.source for record in records), 1)}
+    shown = [column for column in range(len(HEADER)) if not (narrow and column == _INTERVAL)]
     content: list[Block] = []
     for group, members in by_group(records):
-        rows = tuple((*row_cells(record), f"{record.source} ({record.provenance})") for record in members)
-        content += [Heading(heading(group)), Table(HEADER, rows, ALIGN)]
+        rows = [(*row_cells(record), f"[{numbers[record.source]}] {record.provenance}") for record in members]
+        cells = tuple(tuple(row[column] for column in shown) for row in rows)
+        align = "".join(ALIGN[column] for column in shown)
+        content += [Heading(heading(group)), Table(tuple(HEADER[column] for column in shown), cells, align)]
+    content += [Heading("Sources"), Lines(tuple(f"[{number}] {source}" for source, number in numbers.items()))]
     misses = [f"{record.case_id}: {record.message}" for record in records if not record.ok]
     if misses:
         content += [Heading("Misses"), Lines(tuple(misses))]
@@ -76,8 +85,14 @@ def counts(records: Sequence[Record]) -> str:
     misses = sum(not record.ok for record in records)
     groups = len(by_group(records))
     inside = sum(record.inside_strict for record in records)
-    text = f"{len(records)} checks in {groups} groups: {len(records) - misses} within their tolerance, {misses} missed"
-    return f"{text}; {inside} references lie in a strictly guaranteed interval of ours" if inside else text
+    text = f"{_many(len(records), 'check')} in {_many(groups, 'group')}: {len(records) - misses} within their tolerance, {misses} missed"
+    if not inside:
+        return text
+    return f"{text}; {_many(inside, 'reference')} {'lies' if inside == 1 else 'lie'} in a strictly guaranteed interval of ours"
+
+
+def _many(count: int, noun: str) -> str:
+    return f"{count} {noun}" if count == 1 else f"{count} {noun}s"
 
 
 def document(records: Sequence[Record]) -> str:

@@ -26,7 +26,7 @@ def test_table(capsys: pytest.CaptureFixture[str]) -> None:
     out, err = capsys.readouterr()
     assert out.startswith("Torsion constant\n")
     assert "ok  rectangle, sides 1 and 1  IT [mm⁴]  0.140577015" in out
-    assert "1 checks in 1 groups: 1 within their tolerance, 0 missed" in out
+    assert "1 check in 1 group: 1 within their tolerance, 0 missed" in out
     assert err == ""
 
 

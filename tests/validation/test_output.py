@@ -61,10 +61,18 @@ def test_table_names_misses_and_sums_up() -> None:
     text = plain_text(blocks([record(), MISS, NONE]))
     assert "Samples\n" in text
     assert "Other\n" in text
-    assert "A. Author, A Book, 1999, table 1 (computed)" in text
+    assert "1.0e-05  [1] computed\n" in text
+    assert "\nSources\n  [1] A. Author, A Book, 1999, table 1\n" in text
     assert "sample.miss: differs by 0.0594, allowed are 1.41e-06" in text
     assert "sample.none: MeshingError: no mesh" in text
-    assert "3 checks in 2 groups: 1 within their tolerance, 2 missed; 1 references lie in" in text
+    assert "3 checks in 2 groups: 1 within their tolerance, 2 missed; 1 reference lies in" in text
+
+
+def test_narrow_table_has_no_intervals() -> None:
+    assert "[0.140576963, 0.140577066]" in plain_text(blocks([record()]))
+    narrow = plain_text(blocks([record()], narrow=True))
+    assert "0.140576963" not in narrow
+    assert re.search(r"3\.6e-07 +1\.0e-05 +\[1\] computed", narrow)
 
 
 def test_document() -> None:

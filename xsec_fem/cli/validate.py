@@ -8,6 +8,7 @@ import sys
 from collections.abc import Callable, Iterator, Sequence
 from contextlib import contextmanager
 from pathlib import Path
+from shutil import get_terminal_size
 from tempfile import TemporaryDirectory
 from typing import Any
 
@@ -17,6 +18,7 @@ from xsec_fem.errors import Fault, InputError
 from xsec_fem.report.blocks import print_blocks
 
 MISSED = OVER_STRENGTH  # a case outside its tolerance: the command did its work, and the answer is no
+_WIDE = 150  # columns of a terminal that has room for the guaranteed intervals too
 Progress = Callable[[int, int], None]
 
 
@@ -49,7 +51,8 @@ def run(args: argparse.Namespace) -> int:
     if args.json:
         sys.stdout.write(table.document(records))
     else:
-        print_blocks(table.blocks(records), sys.stdout)
+        narrow = sys.stdout.isatty() and get_terminal_size().columns < _WIDE
+        print_blocks(table.blocks(records, narrow), sys.stdout)
         for file in files:
             print(f"  written: {file}")
     return FINE if all(record.ok for record in records) else MISSED
