@@ -85,7 +85,8 @@ def counts(records: Sequence[Record]) -> str:
     misses = sum(not record.ok for record in records)
     groups = len(by_group(records))
     inside = sum(record.inside_strict for record in records)
-    text = f"{_many(len(records), 'check')} in {_many(groups, 'group')}: {len(records) - misses} within their tolerance, {misses} missed"
+    counted = f"{_many(len(records), 'check')} in {_many(groups, 'group')}"
+    text = f"{counted}: {len(records) - misses} within their tolerance, {misses} missed"
     if not inside:
         return text
     return f"{text}; {_many(inside, 'reference')} {'lies' if inside == 1 else 'lie'} in a strictly guaranteed interval of ours"
