@@ -1,12 +1,12 @@
 """Does the validation library bite? Plausible bugs are put into the package one at a time, and the cases must catch every one.
 
     python -m tests.mutation            the table: mutant, how many cases caught it, the first of them
-    python -m tests.mutation NAME ...   only these; --all runs every case of the library instead of the chosen ones, --first stops
-                                        at the first section whose cases miss
+    python -m tests.mutation NAME ...   only these; --all runs every case of the library instead of the chosen ones
+    python -m tests.mutation --first    stops at the first section whose cases miss
 
-Each mutant lives in a process of its own, so that nothing it computed or cached can leak. A rule of degree 2 p on curved triangles is
-none of them: it changes the constants of a ring by 1e-14 at p = 4, less than anyone could call a bug; two degrees less are still exact on
-straight sides.
+Each mutant lives in a process of its own, so that nothing it computed or cached can leak. A rule of degree 2 p on curved triangles
+is none of them: it changes the constants of a ring by 1e-14 at p = 4, less than anyone could call a bug. Two degrees less are still
+exact on straight sides.
 """
 
 from __future__ import annotations
@@ -174,7 +174,8 @@ MUTANTS = (
            _after(lambda found, *_: (-found[0], *found[1:]))),
     Mutant("hole ignored", "holes are filled", front, "make_mesh", _before(_without_holes)),
     Mutant("straight sides", "curved sides straightened", front, "make_mesh", _after(_straightened)),
-    Mutant("slit closed", "faces that only touch stay bonded", slit_joints, "open_joints", lambda right: lambda section, mesh: mesh),
+    Mutant("slit closed", "faces that only touch stay bonded", slit_joints, "open_joints",
+           lambda right: lambda section, mesh: mesh),
     Mutant("centre of no coupling", "zero mean twist replaced by Trefftz' centre", stiffness, "shear_stiffness",
            _after(lambda s, *_: replace(s, shear_centre=s.trefftz_centre))),
     Mutant("centre of no twist", "Trefftz' centre replaced by zero mean twist", stiffness, "shear_stiffness",

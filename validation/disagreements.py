@@ -28,9 +28,9 @@ PAGE = Path(__file__).with_name("disagreements.md")
 _HEAD = """\
 # Where handbooks are wrong, or mean something else
 
-Every number in the columns "ours" is solved, those under "exact" are computed from their formula; `python -m validation.disagreements`
-does both again. Handbook values are from memory unless marked (read). Where one of them is a reference of the validation all the same,
-its tolerance is given with what the handbook's formula leaves out.
+Every number in the columns "ours" is solved, those under "exact" are computed from their formula;
+`python -m validation.disagreements` does both again. Handbook values are from memory unless marked (read). Where one of them is a
+reference of the validation all the same, its tolerance is given with what the handbook's formula leaves out.
 """
 _ROARK = {  # r/t: Roark's Formulas, table 10.1, re-entrant boundary, read in a copy (its signs were lost there and put back)
     0.05: 3.9629, 0.125: 2.43645, 0.2: 2.05747, 0.3: 1.85854, 0.4: 1.77168, 0.75: 1.70877, 1.0: 1.73313, 1.5: 1.82449,
@@ -81,10 +81,10 @@ def _semicircle() -> list[str]:
     return [
         "## Shear centre of a semicircle",
         "",
-        "8 R/(15 π) (3 + 4 ν)/(1 + ν) from the circle's centre (S. P. Timoshenko, J. N. Goodier, Theory of Elasticity; I. S. Sokolnikoff).",
-        "It makes the twist zero *at the circle's centre*, which is on the section's edge; the mean over the section is then",
-        "ν/(1 + ν) V y_c/(2 G I), not zero. Two definitions are in use elsewhere: no twist in the mean, and no energy shared with torsion",
-        "(E. Trefftz, which does not depend on ν). Distances for R = 1:",
+        "8 R/(15 π) (3 + 4 ν)/(1 + ν) from the circle's centre (S. P. Timoshenko, J. N. Goodier, Theory of Elasticity; I. S.",
+        "Sokolnikoff). It makes the twist zero *at the circle's centre*, which is on the section's edge; the mean over the",
+        "section is then ν/(1 + ν) V y_c/(2 G I), not zero. Two definitions are in use elsewhere: no twist in the mean, and",
+        "no energy shared with torsion (E. Trefftz, which does not depend on ν). Distances for R = 1:",
         *_table(*rows),
     ]
 
@@ -98,8 +98,8 @@ def _narrow_warping() -> list[str]:
     return [
         "## Warping constant of a rectangle",
         "",
-        "b³h³/144 (V. Z. Vlasov; S. P. Timoshenko, J. M. Gere) is the limit of narrow rectangles; for stocky ones it is many times too",
-        "large. b = 1:",
+        "b³h³/144 (V. Z. Vlasov; S. P. Timoshenko, J. M. Gere) is the limit of narrow rectangles; for stocky ones it is many",
+        "times too large. b = 1:",
         *_table(*rows),
     ]
 
@@ -114,8 +114,8 @@ def _sectors() -> list[str]:
     return [
         "## Torsion of sectors",
         "",
-        "IT = k R⁴ (table in S. P. Timoshenko, J. N. Goodier, torsion of sectors; 0.296 for the semicircle stands in several handbooks,",
-        f"its closed form is π/2 - 4/π = {semicircle_torsion_constant(1.0):.5f}):",
+        "IT = k R⁴ (table in S. P. Timoshenko, J. N. Goodier, torsion of sectors; 0.296 for the semicircle stands in several",
+        f"handbooks, its closed form is π/2 - 4/π = {semicircle_torsion_constant(1.0):.5f}):",
         *_table(*rows),
     ]
 
@@ -132,8 +132,8 @@ def _fillets() -> list[str]:
         "## Stress in the fillet of an angle under torsion",
         "",
         "Largest stress over G θ t, legs 5 t. The rules of thumb (E. Trefftz; A. A. Griffith, G. I. Taylor) and the formula of",
-        "R. J. Roark's tables against two computations that have nothing in common. The nominal stress of the two rules may have been meant",
-        "differently; as they are quoted they are on the safe side for small radii and not for r > 0.4 t.",
+        "R. J. Roark's tables against two computations that have nothing in common. The nominal stress of the two rules may",
+        "have been meant differently; as they are quoted they are on the safe side for small radii and not for r > 0.4 t.",
         *_table(*rows),
     ]
 
@@ -158,9 +158,9 @@ def _coefficients() -> list[str]:
     return [
         "## Shear coefficients",
         "",
-        "G. R. Cowper's formulas (J. Appl. Mech. 33, 1966) define the shear angle by mean displacements; the shear area of a frame model is",
-        "the one that stores the section's energy, as ours does (J. D. Renton 1991; F. Gruttmann, W. Wagner 2001). Cowper's value",
-        "rises with ν and knows no width; the energy one falls, and far in wide sections.",
+        "G. R. Cowper's formulas (J. Appl. Mech. 33, 1966) define the shear angle by mean displacements; the shear area of a",
+        "frame model is the one that stores the section's energy, as ours does (J. D. Renton 1991; F. Gruttmann, W. Wagner",
+        "2001). Cowper's value rises with ν and knows no width; the energy one falls, and far in wide sections.",
         *_table(*rows),
     ]
 
@@ -193,10 +193,10 @@ def _two_cells() -> list[str]:
     return [
         "## Shear flow of a two-cell box",
         "",
-        "Compatibility round each cell is written with one twist in textbooks. Where the section is free to change its shape, bending",
-        "narrows one side and widens the other, and cells off the centroid are twisted against each other by 2 ν A_m (a_y z_c - a_z y_c):",
-        "the flows change however thin the walls. Diaphragms bring the textbook's back. Flows of V = 1 of the box in",
-        "`families/closed_cells.py`, where the solved values agree with both columns as t -> 0:",
+        "Compatibility round each cell is written with one twist in textbooks. Where the section is free to change its shape,",
+        "bending narrows one side and widens the other, and cells off the centroid are twisted against each other by 2 ν A_m",
+        "(a_y z_c - a_z y_c): the flows change however thin the walls. Diaphragms bring the textbook's back. Flows of V = 1",
+        "of the box in `families/closed_cells.py`, where the solved values agree with both columns as t -> 0:",
         *_table(*rows),
     ]
 
@@ -216,8 +216,9 @@ def _european() -> list[str]:
     return [
         "## It and Iw of European sections",
         "",
-        "It is tabulated by a fit for the junctions, used here for radii larger than it was made for; Iw by Iz (h - tf)²/4, which takes the",
-        "flanges as lines. The thick junctions turn about their own centres, below the flanges' mid-lines, and warp less:",
+        "It is tabulated by a fit for the junctions, used here for radii larger than it was made for; Iw by Iz (h - tf)²/4,",
+        "which takes the flanges as lines. The thick junctions turn about their own centres, below the flanges' mid-lines,",
+        "and warp less:",
         *_table(*rows),
     ]
 
@@ -228,8 +229,12 @@ def _tapered_channels() -> list[str]:
     ]
     for name, row in AISC_C.items():
         part: dict[str, float | str] = {
-            "shape": "channel", "depth": float(row["d"]), "width": float(row["bf"]), "web": float(row["tw"]), "flange": float(row["tf"]),
-        }  # fmt: skip
+            "shape": "channel",
+            "depth": float(row["d"]),
+            "width": float(row["bf"]),
+            "web": float(row["tw"]),
+            "flange": float(row["tf"]),
+        }
         pair = [_part(part, 0.3).properties, _part({**part, "taper": 1 / 6}, 0.3).properties]
         eo = [-float(row["bf"]) / 2 - own.ysc_trefftz for own in pair]
         Cw = [own.Iw for own in pair]
@@ -238,8 +243,9 @@ def _tapered_channels() -> list[str]:
     return [
         "## American standard channels",
         "",
-        "AISC Shapes Database v15.0 (read): eo and Cw of C shapes are those of flanges of one thickness; the shapes' flanges taper 1:6.",
-        "Drawn as they are rolled (without radii), the shear centre lies nearer to the web and the warping constant is smaller:",
+        "AISC Shapes Database v15.0 (read): eo and Cw of C shapes are those of flanges of one thickness; the shapes' flanges",
+        "taper 1:6. Drawn as they are rolled (without radii), the shear centre lies nearer to the web and the warping",
+        "constant is smaller:",
         *_table(*rows),
     ]
 
@@ -258,8 +264,9 @@ def _upn() -> list[str]:
     return [
         "## UPN 300",
         "",
-        "The tabulated Iz is 0.4 % above what the tabulated dimensions give (flange 16 at b/2, slope 8 %, r1 = 16, r2 = 8), more than its",
-        "rounding; all else agrees, and Iz of UPN 200 too. It belongs to a toe radius between 7 and 7.5 mm. Not explained further.",
+        "The tabulated Iz is 0.4 % above what the tabulated dimensions give (flange 16 at b/2, slope 8 %, r1 = 16, r2 = 8),",
+        "more than its rounding; all else agrees, and Iz of UPN 200 too. It belongs to a toe radius between 7 and 7.5 mm. Not",
+        "explained further.",
         *_table(*rows),
     ]
 
@@ -273,8 +280,9 @@ def _angle_centre() -> list[str]:
     return [
         "## Shear centre of an angle",
         "",
-        f"Tables place it where the legs' mid-lines meet, {t / 2:g} in from either face of L4X4X1/2; with its root radius it lies at",
-        f"{own.ysc_trefftz:.4f} in: {own.ysc_trefftz - t / 2:.4f} in, or {(own.ysc_trefftz - t / 2) / t:.0%} of the thickness, further in.",
+        f"Tables place it where the legs' mid-lines meet, {t / 2:g} in from either face of L4X4X1/2; with its root radius it",
+        f"lies at {own.ysc_trefftz:.4f} in: {own.ysc_trefftz - t / 2:.4f} in, or {(own.ysc_trefftz - t / 2) / t:.0%} of the",
+        "thickness, further in.",
     ]
 
 

@@ -1,8 +1,8 @@
 """Manufactured solutions for the kernel: u is given, the load is ∫ q . grad v with q = G grad u (and ∫ s v for a source s).
 
-Any u that is continuous solves its own problem, whatever G jumps; so u has a kink where two materials meet. Nothing here knows the
-theory of beams. Orders: P. J. Roache, Code verification by the method of manufactured solutions, J. Fluids Eng. 124, 2002; p + 1 in L2
-and p in the energy norm for degree p (any text on finite elements).
+Any u that is continuous solves its own problem, whatever G jumps; so u has a kink where two materials meet. Nothing here knows
+the theory of beams. Orders: P. J. Roache, Code verification by the method of manufactured solutions, J. Fluids Eng. 124, 2002;
+p + 1 in L2 and p in the energy norm for degree p (any text on finite elements).
 """
 
 from __future__ import annotations

@@ -1,7 +1,7 @@
 """Two general-purpose finite element libraries solve the same Neumann problems on the same triangles, with forms of their own.
 
-Same triangles and same degree make the same discrete solution: constants must agree to round-off times the condition number. Nothing
-but the mesh and the moduli is shared; the weak forms are written from the equations, flexure as one problem, not two.
+Same triangles and same degree make the same discrete solution: constants must agree to round-off times the condition number.
+Nothing but the mesh and the moduli is shared; the weak forms are written from the equations, flexure as one problem, not two.
 `python -m validation.second_opinions` writes the page `second_opinions.md`.
 """
 
@@ -136,7 +136,7 @@ def scikit_fem(section: Section) -> Opinion:
     r = x - np.array([over(E * x[0]), over(E * x[1])])[:, None, None] / EA
     EI = np.array([[over(E * r[i] * r[j]) for j in (0, 1)] for i in (0, 1)])
 
-    @skfem.BilinearForm
+    @skfem.BilinearForm  # type: ignore[untyped-decorator]
     def stiffness(u: Any, v: Any, w: Any) -> Any:
         return np.einsum("ij...,j...,i...->...", np.broadcast_to(G, (2, 2, *dx.shape)), u.grad, v.grad)
 
@@ -145,7 +145,7 @@ def scikit_fem(section: Section) -> Opinion:
     def solve(body: Any, strain: Any) -> tuple[Any, Any, Any]:
         """tau = G (grad u + strain) with div tau = -body; returns u at points, strains and stresses."""
 
-        @skfem.LinearForm
+        @skfem.LinearForm  # type: ignore[untyped-decorator]
         def load(v: Any, w: Any) -> Any:
             return body * v - np.einsum("ij...,j...,i...->...", G, strain, v.grad)
 
@@ -270,8 +270,8 @@ def page() -> str:
     lines = [
         "# Second opinions",
         "",
-        f"Degree {ORDER}, the same triangles in all columns, so the differences are round-off: the largest relative one of GIT, of the nine",
-        "flexibilities of Vy, Vz and T, of both shear centres and of EIw, rounded up to a power of ten.",
+        f"Degree {ORDER}, the same triangles in all columns, so the differences are round-off: the largest relative one of GIT, of",
+        "the nine flexibilities of Vy, Vz and T, of both shear centres and of EIw, rounded up to a power of ten.",
         "`python -m validation.second_opinions` writes this page.",
         "",
         f"| {' | '.join(['section', 'triangles', 'GIT', 'F_yy', 'F_zz', 'F_yz', 'shear centre', 'Trefftz', *names])} |",
@@ -285,8 +285,12 @@ def page() -> str:
             for c in (_clean(own.shear_centre, size), _clean(own.trefftz_centre, size))
         )
         coupling = F[0, 1] if abs(F[0, 1]) > 1e-9 * F[0, 0] else 0.0
-        cells = [section.name, str(len(section.mesh.triangles)), *(f"{value:.7g}" for value in (own.GIT, F[0, 0], F[1, 1], coupling)),
-                 *centres]  # fmt: skip
+        cells = [
+            section.name,
+            str(len(section.mesh.triangles)),
+            *(f"{value:.7g}" for value in (own.GIT, F[0, 0], F[1, 1], coupling)),
+            *centres,
+        ]
         cells += [f"{10.0 ** np.ceil(np.log10(own.furthest(LIBRARIES[name][2](section)))):.0e}" for name in names]
         lines.append(f"| {' | '.join(cells)} |")
     return "\n".join([*lines, *(f"\n{text}." for text in absent.values())]) + "\n"

@@ -151,7 +151,7 @@ def _quadrilateral(corners: FloatArray) -> Map:
     def mapping(q: FloatArray) -> FloatArray:
         u, v = q[:, :1], q[:, 1:]
         lower, upper = (1 - u) * corners[0] + u * corners[1], (1 - u) * corners[3] + u * corners[2]
-        return (1 - v) * lower + v * upper
+        return np.asarray((1 - v) * lower + v * upper)
 
     return mapping
 

@@ -82,7 +82,7 @@ def test_equal_cells_share_nothing_with_the_middle_web_in_torsion() -> None:
     box = two_cell_box(100.0, (100.0, 100.0), (2.0, 1.0, 2.0), 2.0)
     IT, flows = box.torsion()
     assert flows[1] == pytest.approx(0.0, abs=1e-9)
-    assert IT == pytest.approx(4 * 20000.0**2 / (600 / 2), rel=1e-12)  # Bredt without the web
+    assert pytest.approx(4 * 20000.0**2 / (600 / 2), rel=1e-12) == IT  # Bredt without the web
 
 
 def test_no_poisson_effect_on_symmetric_cells() -> None:
@@ -157,7 +157,10 @@ def test_rolled_forms() -> None:
 
 @pytest.mark.parametrize(
     ("printed", "digits", "half"),
-    [("0.435", 3, 0.0005), ("53.81", 4, 0.005), ("110", 3, 0.5), ("2070", 3, 5.0), ("16000", 3, 50.0), ("125900", 4, 50.0), ("8356", 4, 0.5)],
+    [
+        ("0.435", 3, 0.0005), ("53.81", 4, 0.005), ("110", 3, 0.5), ("2070", 3, 5.0), ("16000", 3, 50.0),
+        ("125900", 4, 50.0), ("8356", 4, 0.5),
+    ],
 )  # fmt: skip
 def test_half_a_digit(printed: str, digits: int, half: float) -> None:
     assert half_digit(printed, digits) == half

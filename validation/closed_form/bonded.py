@@ -6,9 +6,10 @@ phi = 0 on the outline, phi and (1/G) d phi/dn continuous where materials meet:
     torsion of unit twist       tau0 = 0                            -div(grad phi/G) = 2
     flexure by V = 1            tau0 = (0, E Q/(EI b))              -div(grad phi/G) = (2 nu/EI) (y - yc)
 
-(N. I. Muskhelishvili, Some Basic Problems of the Mathematical Theory of Elasticity, 1953, ch. on compound bars, cited from memory;
-the series and the flexure of compound bars were derived here.) In a rectangle whose layers lie side by side along s, the sources are
-expanded in the direction r across: f'' - k² f = -G q(s) for every term, q linear in each layer, f = 0 at both ends.
+(N. I. Muskhelishvili, Some Basic Problems of the Mathematical Theory of Elasticity, 1953, ch. on compound bars, cited from
+memory; the series and the flexure of compound bars were derived here.) In a rectangle whose layers lie side by side along s,
+the sources are expanded in the direction r across: f'' - k² f = -G q(s) for every term, q linear in each layer, f = 0 at both
+ends.
 """
 
 from __future__ import annotations
@@ -139,7 +140,7 @@ class LayeredFlexure:
 
     def _terms(self) -> tuple[Terms, FloatArray]:
         w, n = self.width / 2, np.arange(1, _TERMS)
-        k = n * np.pi / w
+        k: FloatArray = np.asarray(n * np.pi / w, dtype=np.float64)
         c = 2 * (-1.0) ** (n + 1) / k  # y = sum c sin(k y)
         q = 2 * self.nu / self.EI * np.broadcast_to(c[:, None, None], (len(k), len(self.E), 2))
         return solve_terms(k, self.G, np.diff(self.lines), q), c
@@ -192,7 +193,7 @@ class SideBySide:
 
     def _terms(self, at_lines: FloatArray) -> tuple[Terms, FloatArray]:
         c, n = self.depth / 2, np.arange(_TERMS)
-        k = (2 * n + 1) * np.pi / (2 * c)
+        k: FloatArray = np.asarray((2 * n + 1) * np.pi / (2 * c), dtype=np.float64)
         one = 2 * (-1.0) ** n / (c * k)  # 1 = sum one cos(k z)
         q = one[:, None, None] * np.stack([at_lines[:-1], at_lines[1:]], axis=-1)
         return solve_terms(k, self.G, np.diff(self.lines), q), 2 * (-1.0) ** n / k  # and ∫ cos(k z) dz

@@ -1,7 +1,7 @@
 """V S/I of sections built of simple pieces, with moduli and a product of inertia: equilibrium of what is cut off, nothing else.
 
-q = ∫_A E (a . r) dA, a = EI^-1 V, r from the E-weighted centroid (D. I. Jourawski, 1856; any text on the strength of materials; with
-Iyz and E derived here from the same equilibrium).
+q = ∫_A E (a . r) dA, a = EI^-1 V, r from the E-weighted centroid (D. I. Jourawski, 1856; any text on the strength of
+materials; with Iyz and E derived here from the same equilibrium).
 """
 
 from __future__ import annotations

@@ -1,13 +1,14 @@
 """Thin walls with closed cells: flows by equilibrium at the nodes and compatibility of warping round each cell.
 
 Each wall carries q(s) = q0 - ∫ E t (a . r) ds; the walls' q0 follow from the balance of flow at every node and from
-∮ q/(G t) ds = 2 A_m (twist + the Poisson term) round every cell (R. Bredt, Kritische Bemerkungen zur Drehungselastizität, Z. VDI 40, 1896; the indeterminate
-shear flow of several cells: T. H. G. Megson, Aircraft Structures for Engineering Students, ch. on closed section beams, from memory;
-the system below was derived here). Stresses are even across the thickness.
+∮ q/(G t) ds = 2 A_m (twist + the Poisson term) round every cell (R. Bredt, Kritische Bemerkungen zur Drehungselastizität, Z.
+VDI 40, 1896; the indeterminate shear flow of several cells: T. H. G. Megson, Aircraft Structures for Engineering Students, ch.
+on closed section beams, from memory; the system below was derived here). Stresses are even across the thickness.
 
 The Poisson term: where the section is free to change its shape, grad psi - d is compatible, and ∮ d . ds round a cell of area A_m
-with centroid c is 2 nu A_m (a_y z_c - a_z y_c), a = EI^-1 V (derived here). It does not fade with the thickness: cells to either side
-of the centroid are twisted against each other. Textbooks leave it out (nu = 0), as if diaphragms held the section's shape.
+with centroid c is 2 nu A_m (a_y z_c - a_z y_c), a = EI^-1 V (derived here). It does not fade with the thickness: cells to
+either side of the centroid are twisted against each other. Textbooks leave it out (nu = 0), as if diaphragms held the
+section's shape.
 """
 
 from __future__ import annotations
@@ -90,7 +91,7 @@ class ThinWalls:
         return float(2 * areas @ flows), around.T @ flows
 
     def shear(self, force: Sequence[float]) -> tuple[FloatArray, FloatArray]:
-        """(W,) flows at the start and in the middle of each wall under a force (Vy, Vz) without mean twist; positive along the wall."""
+        """(W,) flows at the start and in the middle of each wall under a force without mean twist, positive along the wall."""
         a, b = (end - self.centroid for end in self._ends)
         gradient = np.linalg.solve(self.second_moments, np.asarray(force, float))
         fa, fb, L = a @ gradient, b @ gradient, self.lengths

@@ -1,8 +1,8 @@
 """Rectangles of Gxy != Gxz: stretched along the axes they are isotropic ones.
 
 phi_yy/Gxz + phi_zz/Gxy = -2 (torsion) or -2 nu_xy y/(E I) (flexure by V = 1 along z) with phi = 0 on the sides; y sqrt(Gxz) and
-z sqrt(Gxy) as coordinates make the left side Laplace's (S. G. Lekhnitskii, Theory of Elasticity of an Anisotropic Body, 1963, torsion of
-orthotropic bars, from memory; the flexure was derived here in the same way).
+z sqrt(Gxy) as coordinates make the left side Laplace's (S. G. Lekhnitskii, Theory of Elasticity of an Anisotropic Body, 1963,
+torsion of orthotropic bars, from memory; the flexure was derived here in the same way).
 """
 
 from __future__ import annotations

@@ -1,7 +1,7 @@
 """Limits of open thin walls, in mid-line dimensions: shear centres, warping and torsion constants as t -> 0.
 
-S. P. Timoshenko, J. M. Gere, Theory of Elastic Stability, 2nd ed. 1961, appendix (table of e and warping constants), and V. Z. Vlasov,
-Thin-walled elastic beams, 1961, from memory; the arc was derived again here.
+S. P. Timoshenko, J. M. Gere, Theory of Elastic Stability, 2nd ed. 1961, appendix (table of e and warping constants), and V. Z.
+Vlasov, Thin-walled elastic beams, 1961, from memory; the arc was derived again here.
 """
 
 from __future__ import annotations

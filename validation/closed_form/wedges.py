@@ -1,7 +1,7 @@
 """Exponents of antiplane corners with free sides: u ~ r^lambda, stress ~ r^(lambda - 1).
 
-After M. L. Williams, Stress singularities resulting from various boundary conditions in angular corners of plates in extension, J. Appl.
-Mech. 19, 1952; antiplane: harmonic r^lambda cos(lambda theta), derived here.
+After M. L. Williams, Stress singularities resulting from various boundary conditions in angular corners of plates in
+extension, J. Appl. Mech. 19, 1952; antiplane: harmonic r^lambda cos(lambda theta), derived here.
 """
 
 from __future__ import annotations

@@ -1,4 +1,5 @@
-"""Two materials of one Poisson's ratio: concentric, side by side and layered. Unequal ratios are left out: no exact solution is known
+"""Two materials of one Poisson's ratio: concentric, side by side and layered. Unequal ratios are left out: no exact solution
+is known
 
 for them within the theory, whose in-plane mismatch is neglected.
 """

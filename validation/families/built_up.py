@@ -8,6 +8,7 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from math import sqrt
+from typing import Any
 
 import numpy as np
 
@@ -76,8 +77,8 @@ def _plank(name: str, piece: Piece, width: float, height: float, material: str =
     }
 
 
-def _joint(number: int, first: str, second: str, kind: str = "glue", **more: object) -> Table:
-    return {"name": f"joint {number}", "between": [first, second], "kind": kind, **more}  # type: ignore[dict-item]
+def _joint(number: int, first: str, second: str, kind: str = "glue", **more: Any) -> Table:
+    return {"name": f"joint {number}", "between": [first, second], "kind": kind, **more}
 
 
 def _beam(
@@ -216,7 +217,7 @@ def _fasteners() -> list[Case]:
     """The planked I with screws of 900 N: spacing F/q of one row, 2 F/q of two."""
     found = []
     for rows, places in ((1, [0.0]), (2, [-12.0, 12.0])):
-        screws = {"kind": "fasteners", "rows": places, "diameter": 6.0, "capacity": 900.0}
+        screws: dict[str, Any] = {"kind": "fasteners", "rows": places, "diameter": 6.0, "capacity": 900.0}
         joints = [_joint(1, "1", "2", **screws), _joint(2, "3", "2", **screws)]
         beam = _beam(
             f"screws{rows}", f"planked I, {rows} row(s) of screws of 900 N, Vz = 10 kN",
@@ -224,9 +225,13 @@ def _fasteners() -> list[Case]:
         )  # fmt: skip
         flow = beam.parts.flow([0], Vz=10000.0)
         spacing = beam.case(
-            "largest spacing", lambda r: r.cases[0].joints[0].required["spacing"], rows * 900.0 / flow, _FLOW if rows == 1 else _SPLIT,
-            "mm", quick=rows == 1,
-        )  # fmt: skip
+            "largest spacing",
+            lambda r: r.cases[0].joints[0].required["spacing"],
+            rows * 900.0 / flow,
+            _FLOW if rows == 1 else _SPLIT,
+            "mm",
+            quick=rows == 1,
+        )
         found += [beam.flow(0, [0]), spacing]
     return found
 

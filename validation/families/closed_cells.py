@@ -23,8 +23,11 @@ _BREDT = Source(
     "R. Bredt", "Kritische Bemerkungen zur Drehungselastizität, Z. VDI 40", "1896", "several cells: 4 A_mᵀ D⁻¹ A_m"
 )
 _FLOWS = Source(
-    "T. H. G. Megson", "Aircraft Structures for Engineering Students", "1972", "shear of multi-cell sections; the Poisson term derived here"
-)  # fmt: skip
+    "T. H. G. Megson",
+    "Aircraft Structures for Engineering Students",
+    "1972",
+    "shear of multi-cell sections; the Poisson term derived here",
+)
 
 
 @cache
@@ -70,10 +73,12 @@ def _limit(thick: float, thin: float) -> float:
 
 
 def _tolerance(size: float) -> Tolerance:
-    # first order is extrapolated away; t/a = 6/100 for the thickest web, a coefficient of order 1 on its square, and on the mean flow
+    # first order is extrapolated away; t/a = 6/100 for the thickest web, a coefficient of order 1 on its square
     return Tolerance(
-        size * (6 / _WIDTHS[0]) ** 2, "extrapolated to t = 0 from t/a = 6/100 and 3/100: what is left is of order (t/a)²", relative=False
-    )  # fmt: skip
+        size * (6 / _WIDTHS[0]) ** 2,
+        "extrapolated to t = 0 from t/a = 6/100 and 3/100: what is left is of order (t/a)²",
+        relative=False,
+    )
 
 
 def cases() -> list[Case]:

@@ -17,7 +17,9 @@ from ..sources import TIMOSHENKO_GOODIER, at
 
 GROUP = "conventions"
 _STATICS = Source("statics", "right-handed axes x, y, z; actions on the +x face", "", "derived here")
-_LEKHNITSKII = Source("S. G. Lekhnitskii", "Theory of Elasticity of an Anisotropic Body", "1963", "orthotropic bars; flexure derived here")
+_LEKHNITSKII = Source(
+    "S. G. Lekhnitskii", "Theory of Elasticity of an Anisotropic Body", "1963", "orthotropic bars; flexure derived here"
+)
 _EXACT = Tolerance(1e-10, "polynomials on straight sides; round-off")
 _SMALL = Tolerance(1e-9, "round-off of lengths of order 1 to 100", relative=False)
 _ENERGY = Tolerance(1e-5, "energies of meshes asked for 1e-3 in energy: its square, and one more for the turned tensor")
@@ -25,10 +27,23 @@ _ACCURACY: Table = {"accuracy": 1e-3}
 
 
 def _case(
-    key: str, title: str, quantity: str, text: str, read: Callable[[Result], float], reference: float, tolerance: Tolerance, unit: str,
-    source: Source = _STATICS,
+    key: str, title: str, quantity: str, text: str, read: Callable[[Result], float], reference: float, tolerance: Tolerance,
+    unit: str, source: Source = _STATICS,
 ) -> Case:  # fmt: skip
-    return Case(f"conventions.{key}", GROUP, title, quantity, (text,), read, reference, source, "computed", tolerance, unit, quick=True)
+    return Case(
+        f"conventions.{key}",
+        GROUP,
+        title,
+        quantity,
+        (text,),
+        read,
+        reference,
+        source,
+        "computed",
+        tolerance,
+        unit,
+        quick=True,
+    )
 
 
 def cases() -> list[Case]:
@@ -58,10 +73,21 @@ def _load_points() -> list[Case]:
         {"name": "point", "Vy": 3.0, "Vz": 5.0, "T": 2.0, "load_point": [11.0, 24.0]},
         {"name": "centroid", "Vz": 5.0, "T": 2.0, "load_point": "centroid"},
     ]
-    text = section_text("loaded", [{"shape": "rectangle", "width": 2.0, "height": 4.0, "at": [10.0, 20.0]}], actions=actions)
+    text = section_text(
+        "loaded", [{"shape": "rectangle", "width": 2.0, "height": 4.0, "at": [10.0, 20.0]}], actions=actions
+    )
     title = "rectangle 2 x 4 at (10, 20), V = (3, 5) at (11, 24), T = 2"
     return [
-        _case("load-point", title, "T about the shear centre", text, lambda r: r.cases[0].T_total, 2 + 5 * 1 - 3 * 4.0, _SMALL, "N mm"),
+        _case(
+            "load-point",
+            title,
+            "T about the shear centre",
+            text,
+            lambda r: r.cases[0].T_total,
+            2 + 5 * 1 - 3 * 4.0,
+            _SMALL,
+            "N mm",
+        ),
         _case("centroid", title, "T, through the centroid", text, lambda r: r.cases[1].T_total, 2.0, _SMALL, "N mm"),
     ]
 
@@ -113,15 +139,22 @@ def _grain() -> list[Case]:
     E, Gxy, Gxz, nu_xy, nu_xz, w, h = 11000.0, 900.0, 150.0, 0.45, 0.25, 3.0, 2.0
     material: Table = {"E": E, "Gxy": Gxy, "Gxz": Gxz, "nu_xy": nu_xy, "nu_xz": nu_xz}
     c, s = cos(radians(30)), sin(radians(30))
-    turned = [[c * y - s * z, s * y + c * z] for y, z in ((-w / 2, -h / 2), (w / 2, -h / 2), (w / 2, h / 2), (-w / 2, h / 2))]
+    turned = [
+        [c * y - s * z, s * y + c * z] for y, z in ((-w / 2, -h / 2), (w / 2, -h / 2), (w / 2, h / 2), (-w / 2, h / 2))
+    ]
     upright: Table = {"shape": "rectangle", "width": w, "height": h, "material": "wood"}
     sections = (
         ("grain0", "grain along y", upright, Gxy, Gxz),
         ("grain90", "grain turned by 90°", {**upright, "grain_angle": 90.0}, Gxz, Gxy),
-        ("turned30", "drawn at 30°, grain at 30°", {"shape": "polygon", "points": turned, "material": "wood", "grain_angle": 30.0}, Gxy,
-         Gxz),
+        (
+            "turned30",
+            "drawn at 30°, grain at 30°",
+            {"shape": "polygon", "points": turned, "material": "wood", "grain_angle": 30.0},
+            Gxy,
+            Gxz,
+        ),
         ("rotated30", "rotated by 30°", {**upright, "rotate": 30.0}, Gxy, Gxz),
-    )  # fmt: skip
+    )
     found = []
     for key, words, part, along_y, along_z in sections:
         title = f"orthotropic rectangle 3 x 2, {words}"
@@ -133,9 +166,18 @@ def _grain() -> list[Case]:
         if "30" not in key:
             flexibility = rectangle_flexibility(w, h, E, along_y, along_z, nu_xy if along_y == Gxy else nu_xz)
             found.append(
-                _case(f"{key}.flexibility", title, "shear flexibility", text, lambda r: r.properties.shear_flexibility[1][1], flexibility,
-                      _ENERGY, "1/N", _LEKHNITSKII)
-            )  # fmt: skip
+                _case(
+                    f"{key}.flexibility",
+                    title,
+                    "shear flexibility",
+                    text,
+                    lambda r: r.properties.shear_flexibility[1][1],
+                    flexibility,
+                    _ENERGY,
+                    "1/N",
+                    _LEKHNITSKII,
+                )
+            )
     return found
 
 
@@ -144,12 +186,42 @@ def _without_nu() -> list[Case]:
     nu, E = 0.4, 2.8  # G = 1
     text = section_text("plain flow", [{"shape": "rectangle", "width": 4.0, "height": 1.0}], nu=nu, E=E,
                         solve={**_ACCURACY, "nu_effect": False})  # fmt: skip
-    with_nu = section_text("with nu", [{"shape": "rectangle", "width": 4.0, "height": 1.0}], nu=nu, E=E, solve=_ACCURACY)
+    with_nu = section_text(
+        "with nu", [{"shape": "rectangle", "width": 4.0, "height": 1.0}], nu=nu, E=E, solve=_ACCURACY
+    )
     title, place = "rectangle 4 x 1, nu = 0.4", at(TIMOSHENKO_GOODIER, "bending of bars, rectangular section")
     return [
-        _case("no-nu.Asz", f"{title}, nu_effect = false", "Asz/A", text, lambda r: r.properties.Asz / 4, 5 / 6, _ENERGY, "-", place),
-        _case("no-nu.GIT", f"{title}, nu_effect = false", "GIT", text, constant("GIT"), rectangle_torsion_constant(4, 1), _ENERGY,
-              "N mm²", place),
-        _case("nu.Asz", title, "Asz/A", with_nu, lambda r: r.properties.Asz / 4, rectangle_shear_coefficient(4, 1, nu), _ENERGY, "-",
-              place),
-    ]  # fmt: skip
+        _case(
+            "no-nu.Asz",
+            f"{title}, nu_effect = false",
+            "Asz/A",
+            text,
+            lambda r: r.properties.Asz / 4,
+            5 / 6,
+            _ENERGY,
+            "-",
+            place,
+        ),
+        _case(
+            "no-nu.GIT",
+            f"{title}, nu_effect = false",
+            "GIT",
+            text,
+            constant("GIT"),
+            rectangle_torsion_constant(4, 1),
+            _ENERGY,
+            "N mm²",
+            place,
+        ),
+        _case(
+            "nu.Asz",
+            title,
+            "Asz/A",
+            with_nu,
+            lambda r: r.properties.Asz / 4,
+            rectangle_shear_coefficient(4, 1, nu),
+            _ENERGY,
+            "-",
+            place,
+        ),
+    ]

@@ -1,16 +1,15 @@
 """Rolled sections: the tool on the tables' dimensions against the tables' constants.
 
-Allowed is what the table itself allows: half a digit of the constant, half a digit of every dimension where dimensions are rounded (AISC)
-carried through the closed forms, and what the table's formula leaves out, with its size.
+Allowed is what the table itself allows: half a digit of the constant, half a digit of every dimension where dimensions are
+rounded (AISC) carried through the closed forms, and what the table's formula leaves out, with its size.
 """
 
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
-from math import sqrt
 
-from xsec_fem.results import Properties, Result
+from xsec_fem.results import Properties
 
 from ..case import Case, Provenance, Source, Tolerance
 from ..closed_form.rolled import (
@@ -128,7 +127,7 @@ def _en_i(name: str, row: Row) -> list[Case]:
     memory = _Shape(name, row, _i_part(d), "N mm", _EN, "from memory", digits=4, rounded_dimensions=False)
     junction = _Model(
         0.03,
-        "2/3 (b - 0.63 tf) tf³ + (h - 2 tf) tw³/3 + 2 (tw/tf)(0.145 + 0.1 r/tf) D⁴ is a fit good to about 3 %; r/tf is up to 1.9 here",
+        "2/3 (b - 0.63 tf) tf³ + (h - 2 tf) tw³/3 + 2 (tw/tf)(0.145 + 0.1 r/tf) D⁴ is a fit, good to about 3 %; r/tf <= 1.9",
     )
     return [
         shape.case("A", lambda p: p.A / 1e2, "cm²", quick=name == "IPE 300"),
@@ -191,9 +190,14 @@ def _c(name: str, row: Row) -> list[Case]:
     left_out = 1.5 * (d["tf"] / (d["bf"] - d["tw"] / 2)) ** 2
     line = f"mid-lines: order (t/b)² is left out ({left_out:.1%})"
     return [
-        shape.case("eo", lambda p: -d["bf"] / 2 - p.ysc_trefftz, "in", _Model(left_out * e / float(row["eo"]), f"{line}, of e = eo + tw/2")),
+        shape.case(
+            "eo",
+            lambda p: -d["bf"] / 2 - p.ysc_trefftz,
+            "in",
+            _Model(left_out * e / float(row["eo"]), f"{line}, of e = eo + tw/2"),
+        ),
         shape.case("Cw", lambda p: p.Iw, "in⁶", _Model(left_out, line)),
-    ]  # fmt: skip
+    ]
 
 
 def _l(name: str, row: Row) -> list[Case]:
@@ -214,8 +218,13 @@ def _l(name: str, row: Row) -> list[Case]:
 def _wt(name: str, row: Row) -> list[Case]:
     d = _numbers(row, "d", "bf", "tw", "tf")
     part: Table = {
-        "shape": "tee", "depth": d["d"], "width": d["bf"], "web": d["tw"], "flange": d["tf"], "root_radius": float(row["kdes"]) - d["tf"],
-    }  # fmt: skip
+        "shape": "tee",
+        "depth": d["d"],
+        "width": d["bf"],
+        "web": d["tw"],
+        "flange": d["tf"],
+        "root_radius": float(row["kdes"]) - d["tf"],
+    }
     shape = _Shape(name, row, part, "kip in", _AISC, "read", tee_moments, d)
     no_spread = _Shape(name, row, part, "kip in", _AISC, "read")
     thin = _Model(

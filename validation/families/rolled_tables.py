@@ -1,7 +1,7 @@
 """Section tables: dimensions and constants as they are printed, digit by digit, so that their rounding is known.
 
-EN: EN 10365:2017 and mills' tables, h b tw tf r in mm; A cm², Iy Iz It cm⁴, Iw cm⁶. IPE: A, Iy, Iz and dimensions read in a copy of an
-open table, the rest from memory; HEA, HEB, UPN from memory (UPN: tf at b/2, 8 %). EN 10219-2:2006, read in a copy.
+EN: EN 10365:2017 and mills' tables, h b tw tf r in mm; A cm², Iy Iz It cm⁴, Iw cm⁶. IPE: A, Iy, Iz and dimensions read in a
+copy of an open table, the rest from memory; HEA, HEB, UPN from memory (UPN: tf at b/2, 8 %). EN 10219-2:2006, read in a copy.
 AISC: Shapes Database v15.0, 2017, read in a copy; inches. Root radii of W and WT are kdes - tf, of L kdes - t.
 """
 
@@ -12,23 +12,23 @@ from collections.abc import Mapping
 Row = Mapping[str, str]
 
 EN_I: Mapping[str, Row] = {
-    "IPE 200": {"h": "200", "b": "100", "tw": "5.6", "tf": "8.5", "r": "12", "A": "28.48", "Iy": "1943", "Iz": "142.4", "It": "6.98",
-                "Iw": "12990"},
-    "IPE 300": {"h": "300", "b": "150", "tw": "7.1", "tf": "10.7", "r": "15", "A": "53.81", "Iy": "8356", "Iz": "603.8", "It": "20.12",
-                "Iw": "125900"},
-    "IPE 500": {"h": "500", "b": "200", "tw": "10.2", "tf": "16", "r": "21", "A": "115.5", "Iy": "48200", "Iz": "2142", "It": "89.29",
-                "Iw": "1249000"},
-    "HEA 200": {"h": "190", "b": "200", "tw": "6.5", "tf": "10", "r": "18", "A": "53.83", "Iy": "3692", "Iz": "1336", "It": "20.98",
-                "Iw": "108000"},
-    "HEA 300": {"h": "290", "b": "300", "tw": "8.5", "tf": "14", "r": "27", "A": "112.5", "Iy": "18260", "Iz": "6310", "It": "85.17",
-                "Iw": "1200000"},
-    "HEB 300": {"h": "300", "b": "300", "tw": "11", "tf": "19", "r": "27", "A": "149.1", "Iy": "25170", "Iz": "8563", "It": "185.0",
-                "Iw": "1688000"},
+    "IPE 200": {"h": "200", "b": "100", "tw": "5.6", "tf": "8.5", "r": "12", "A": "28.48", "Iy": "1943", "Iz": "142.4",
+                "It": "6.98", "Iw": "12990"},
+    "IPE 300": {"h": "300", "b": "150", "tw": "7.1", "tf": "10.7", "r": "15", "A": "53.81", "Iy": "8356", "Iz": "603.8",
+                "It": "20.12", "Iw": "125900"},
+    "IPE 500": {"h": "500", "b": "200", "tw": "10.2", "tf": "16", "r": "21", "A": "115.5", "Iy": "48200", "Iz": "2142",
+                "It": "89.29", "Iw": "1249000"},
+    "HEA 200": {"h": "190", "b": "200", "tw": "6.5", "tf": "10", "r": "18", "A": "53.83", "Iy": "3692", "Iz": "1336",
+                "It": "20.98", "Iw": "108000"},
+    "HEA 300": {"h": "290", "b": "300", "tw": "8.5", "tf": "14", "r": "27", "A": "112.5", "Iy": "18260", "Iz": "6310",
+                "It": "85.17", "Iw": "1200000"},
+    "HEB 300": {"h": "300", "b": "300", "tw": "11", "tf": "19", "r": "27", "A": "149.1", "Iy": "25170", "Iz": "8563",
+                "It": "185.0", "Iw": "1688000"},
 }  # fmt: skip
 
 EN_UPN: Mapping[str, Row] = {
-    "UPN 200": {"h": "200", "b": "75", "tw": "8.5", "tf": "11.5", "r1": "11.5", "r2": "6.0", "A": "32.2", "Iy": "1910", "Iz": "148",
-                "It": "11.9", "Iw": "9070", "ys": "2.01", "ym": "3.94"},
+    "UPN 200": {"h": "200", "b": "75", "tw": "8.5", "tf": "11.5", "r1": "11.5", "r2": "6.0", "A": "32.2", "Iy": "1910",
+                "Iz": "148", "It": "11.9", "Iw": "9070", "ys": "2.01", "ym": "3.94"},
     "UPN 300": {"h": "300", "b": "100", "tw": "10", "tf": "16", "r1": "16", "r2": "8.0", "A": "58.8", "Iy": "8030", "Iz": "495",
                 "It": "37.4", "Iw": "69100", "ys": "2.70", "ym": "5.41"},
 }  # fmt: skip

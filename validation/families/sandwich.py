@@ -57,7 +57,7 @@ def _panel(name: str, face: float, core: float, E_face: float, E_core: float) ->
         1e-9, "a polynomial of degree 2 in z, within the elements' degree; round-off with moduli 1000 apart"
     )
     d = core + face
-    # what the handbook leaves out: the core's own bending, E_c c²/(4 E_f t d) of the core's stress, and that of the faces, t²/(3 d²)
+    # what the handbook leaves out: the core's own bending, E_c c²/(4 E_f t d) of its stress, and that of the faces, t²/(3 d²)
     core_part, face_part = E_core * core**2 / (4 * E_face * face * d), face**2 / (3 * d**2)
     left_out = core_part + face_part
 
@@ -73,12 +73,36 @@ def _panel(name: str, face: float, core: float, E_face: float, E_core: float) ->
         f"{core_part:.1e} and {face_part:.1e} here, and uneven core shear of the first size",
     )  # fmt: skip
     return [
-        case("EIyy", "EIyy", constant("EIyy"), exact.EI, _LAYERS, Tolerance(1e-12, "polynomials on straight sides; round-off"), "N mm²"),
-        case("core-middle", "tau_xz, middle of the core", middle, V * exact.elementary(0.0), _LAYERS, polynomial, "MPa"),
-        case("joint", "tau_xz, core at the face", stress(0.0, half, "tau_xz", part="core", Vz=V), V * exact.elementary(half), _LAYERS,
-             polynomial, "MPa"),
+        case(
+            "EIyy",
+            "EIyy",
+            constant("EIyy"),
+            exact.EI,
+            _LAYERS,
+            Tolerance(1e-12, "polynomials on straight sides; round-off"),
+            "N mm²",
+        ),
+        case(
+            "core-middle", "tau_xz, middle of the core", middle, V * exact.elementary(0.0), _LAYERS, polynomial, "MPa"
+        ),
+        case(
+            "joint",
+            "tau_xz, core at the face",
+            stress(0.0, half, "tau_xz", part="core", Vz=V),
+            V * exact.elementary(half),
+            _LAYERS,
+            polynomial,
+            "MPa",
+        ),
         case("flexibility", "shear flexibility", shear_flexibility, exact.flexibility(), _LAYERS, polynomial, "1/N"),
         case("allen-shear", "tau_xz of the core, V/(b d)", middle, V / (b * d), _ALLEN, handbook, "MPa"),
-        case("allen-stiffness", "shear stiffness, b d² G/c", lambda r: 1 / shear_flexibility(r), b * d**2 * E_core / 2 / core, _ALLEN,
-             handbook, "N"),
-    ]  # fmt: skip
+        case(
+            "allen-stiffness",
+            "shear stiffness, b d² G/c",
+            lambda r: 1 / shear_flexibility(r),
+            b * d**2 * E_core / 2 / core,
+            _ALLEN,
+            handbook,
+            "N",
+        ),
+    ]

@@ -40,8 +40,19 @@ def _exponent(y: float, z: float) -> Callable[[Result], float]:
 
 
 def _case(name: str, title: str, text: str, place: tuple[float, float], reference: float, quick: bool = False) -> Case:
-    return Case(f"corner.{name}", GROUP, title, "exponent of the stress", (text,), _exponent(*place), reference, _WILLIAMS, "computed",
-                _EXACT, quick=quick)  # fmt: skip
+    return Case(
+        f"corner.{name}",
+        GROUP,
+        title,
+        "exponent of the stress",
+        (text,),
+        _exponent(*place),
+        reference,
+        _WILLIAMS,
+        "computed",
+        _EXACT,
+        quick=quick,
+    )
 
 
 def _notched(angle: float) -> Table:
@@ -109,7 +120,7 @@ def radians_tan(angle: float) -> float:
 
 
 def _growth(angle: float) -> Case:
-    """The field of torsion beside the notch's root, on the line that halves the material, at 1e-4 and 1e-3 of the section's size."""
+    """The field of torsion beside the notch's root, 0.3 rad off the line that halves the material, at 1e-4 and 1e-3."""
     near, far = 1e-4, 1e-3
     title = f"notch, {angle:g}° of material"
     text = section_text(title, [_notched(angle)], actions=[{"name": "T", "T": 1.0}], solve={"accuracy": 1e-3})
@@ -119,7 +130,18 @@ def _growth(angle: float) -> Case:
         return log10(at_near / at_far) / log10(near / far)
 
     return Case(
-        f"corner.growth{angle:g}", GROUP, title, "exponent of |tau| read in the field", (text,), read, wedge(angle), _WILLIAMS, "computed",
-        Tolerance(0.02, "the next term is smaller by r^lambda, 1e-2 here, of which the slope sees a half; the mesh's stress is good to 1 %",
-                  relative=False),
-    )  # fmt: skip
+        f"corner.growth{angle:g}",
+        GROUP,
+        title,
+        "exponent of |tau| read in the field",
+        (text,),
+        read,
+        wedge(angle),
+        _WILLIAMS,
+        "computed",
+        Tolerance(
+            0.02,
+            "the next term is smaller by r^lambda, 1e-2 here, of which the slope sees a half; the mesh's stress is good to 1 %",
+            relative=False,
+        ),
+    )

@@ -1,7 +1,7 @@
 """Thin-wall formulas as limits: what the tool gives at t and t/2, carried on to t = 0, and the order at which it gets there.
 
-ours(t)/formula(t) - 1 = c t^m + d t^n + smaller terms. The limit follows by Richardson's extrapolation with the m expected, the order
-m from two thicknesses; where n = m + 1 a third, 2 t, takes out the second term first: e(t) -> 2^n e(t/2) - e(t).
+ours(t)/formula(t) - 1 = c t^m + d t^n + smaller terms. The limit follows by Richardson's extrapolation with the m expected,
+the order m from two thicknesses; where n = m + 1 a third, 2 t, takes out the second term first: e(t) -> 2^n e(t/2) - e(t).
 """
 
 from __future__ import annotations
@@ -32,7 +32,8 @@ Ratio = Callable[[Result, float], float]
 
 @dataclass(frozen=True)
 class _Limit:
-    """One formula: `ratio` is ours over the formula at thickness t, `order` m is expected, `next_order` that of the term after it.
+    """One formula: `ratio` is ours over the formula at thickness t, `order` m is expected, `next_order` that of the term after
+    it.
 
     `size` is the length that t is compared with.
     """
@@ -59,7 +60,7 @@ class _Limit:
             left_out + 5e-6,
             f"left out by the extrapolation: order (t/b)^{self.next_order}; meshes asked for 1e-3 in energy",
         )
-        share = 2**self.order
+        share = 2.0**self.order
 
         def extrapolated(thick: Result, thin: Result) -> float:
             first, second = self.ratio(thick, self.t), self.ratio(thin, self.t / 2)
