@@ -133,7 +133,7 @@ def _fillets() -> list[str]:
         "",
         "Largest stress over G θ t, legs 5 t. The rules of thumb (E. Trefftz; A. A. Griffith, G. I. Taylor) and the formula of",
         "R. J. Roark's tables against two computations that have nothing in common. The nominal stress of the two rules may",
-        "have been meant differently; as they are quoted they are on the safe side for small radii and not for r > 0.4 t.",
+        "have been meant differently; as quoted, 1 + t/(4 r) is on the unsafe side from about r = t/2, the other from 1.4 t.",
         *_table(*rows),
     ]
 

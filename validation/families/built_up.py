@@ -23,6 +23,7 @@ from ..section_text import Table, section_text
 from ..sources import TIMOSHENKO_GOODIER, at
 
 GROUP = "built-up beams"
+QUICK = ("three-planks", "angle-both", "five-boards", "screws1", "seam")
 JOURAWSKI = Source(
     "D. I. Jourawski", "V S/(I t); any text on the strength of materials", "1856", "equilibrium of what is cut off"
 )
@@ -50,11 +51,11 @@ class _Beam:
 
     def case(
         self, quantity: str, read: Callable[[Result], float], reference: float, tolerance: Tolerance = _FLOW,
-        unit: str = "N/mm", quick: bool = True, source: Source = JOURAWSKI,
+        unit: str = "N/mm", source: Source = JOURAWSKI,
     ) -> Case:  # fmt: skip
         name = quantity.replace(" ", "-").replace(",", "")
         return Case(f"built-up.{self.name}.{name}", GROUP, self.title, quantity, (self.text,), read, reference, source, "computed",
-                    tolerance, unit, quick=quick)  # fmt: skip
+                    tolerance, unit, quick=self.name in QUICK)  # fmt: skip
 
     def flow(self, joint: int, cut_off: Sequence[int]) -> Case:
         """The flow of a joint."""
@@ -230,7 +231,6 @@ def _fasteners() -> list[Case]:
             rows * 900.0 / flow,
             _FLOW if rows == 1 else _SPLIT,
             "mm",
-            quick=rows == 1,
         )
         found += [beam.flow(0, [0]), spacing]
     return found

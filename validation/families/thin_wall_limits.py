@@ -48,7 +48,6 @@ class _Limit:
     order: int
     next_order: int
     source: Source
-    quick: bool = False
 
     def cases(self) -> list[Case]:
         """The limit and the order."""
@@ -68,7 +67,7 @@ class _Limit:
 
         return [
             Case(f"thin.{self.name}.limit", GROUP, ends, f"{self.quantity} over its formula, t -> 0", texts, extrapolated, 1.0,
-                 self.source, "computed", limit, quick=self.quick),
+                 self.source, "computed", limit),
             self._order(),
         ]  # fmt: skip
 
@@ -88,7 +87,6 @@ class _Limit:
             f"{self.quantity}: order of the difference in t", tuple(self.make(t) for t in steps), observed, float(self.order),
             self.source, "computed",
             Tolerance(max(0.01, left_out), "terms left out are (t/b)² times the first, times a number of order 1", relative=False),
-            quick=self.quick,
         )  # fmt: skip
 
 
@@ -133,7 +131,7 @@ def cases() -> list[Case]:
     """Return limits of channel, I, slit tube and square tube."""
     c, i, s = "channel 120 x 60, mid-lines", "I 120 x 60, mid-lines", "slit tube, mid-radius 1, slit 2°"
     limits = [
-        _Limit("channel.e", c, "e", _channel, 8.0, _B, _channel_e, 2, 4, _TIMOSHENKO, quick=True),
+        _Limit("channel.e", c, "e", _channel, 8.0, _B, _channel_e, 2, 4, _TIMOSHENKO),
         _Limit("channel.Iw", c, "Iw", _channel, 8.0, _B, lambda r, t: r.properties.Iw / thin_walls.channel(_H, _B, t)[2], 2, 3,
                _TIMOSHENKO),
         _Limit("channel.IT", c, "IT", _channel, 8.0, _B, lambda r, t: r.properties.IT / thin_walls.channel(_H, _B, t)[1], 1, 3,
