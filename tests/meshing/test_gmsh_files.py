@@ -100,3 +100,16 @@ def test_a_wrong_script_gives_gmshs_own_words(tmp_path, capfd):
 def test_a_missing_script_is_told(tmp_path):
     with pytest.raises(InputError, match=r"nowhere.geo cannot be read: No such file"):
         mesh_section(file_section(tmp_path / "nowhere.geo", {"a": None}), 2)
+
+
+@pytest.mark.parametrize(
+    "garbage", [b"\x00\x01\x02\n", bytes(range(256)) * 20 + b"\n", b"<?xml version='1.0'?>\n" * 40]
+)
+def test_file_given_up_does_not_spoil_the_next(tmp_path, garbage):
+    """gmsh keeps what is left of a file it gave up and would find fault with the next one for it."""
+    path = tmp_path / "part.geo"
+    path.write_bytes(garbage)
+    with pytest.raises(MeshingError, match="gmsh failed"):
+        mesh_section(file_section(path, {"pin": "in", "plate": "out"}), 2)
+    mesh = mesh_section(geo(tmp_path, BUILT_IN, {"pin": "in", "plate": "out"}), 2)
+    assert set(mesh.part_names) == {"pin", "plate"}

@@ -16,6 +16,7 @@ from xsec_fem.errors import MeshingError, MissingLibraryError
 
 _LOCK = threading.RLock()
 _LOG_LINES = 6
+_LEFT_OVER = 2000  # characters of an earlier file to get over: its reader stops at the first buffers of a few hundred
 _MODEL = "xsec_fem"
 _OPTIONS = {
     "General.Terminal": 0,
@@ -67,6 +68,23 @@ def gmsh_session(name: str = _MODEL) -> Iterator[Any]:
             raise MeshingError("gmsh failed: " + " | ".join(dict.fromkeys(filter(None, lines)))) from error
         finally:
             gmsh.logger.stop()
+
+
+def merge_file(gmsh: Any, path: str) -> None:
+    """Merge a file into the current model; MeshingError's cause is gmsh's own exception when it cannot be read.
+
+    gmsh's reader keeps what it left of a file that it gave up, for the life of the process, and trips over one character of it
+    at each later attempt, before the first line. Such an attempt says nothing of this file and is made again.
+    """
+    for _ in range(_LEFT_OVER):
+        try:
+            gmsh.merge(path)
+        except Exception:
+            if "line 0: " not in gmsh.logger.getLastError():
+                raise
+        else:
+            return
+    gmsh.merge(path)
 
 
 @contextmanager
