@@ -103,7 +103,7 @@ def test_a_missing_script_is_told(tmp_path):
 
 
 @pytest.mark.parametrize(
-    "garbage", [b"\x00\x01\x02\n", bytes(range(256)) * 20 + b"\n", b"<?xml version='1.0'?>\n" * 40]
+    "garbage", [b"\x00\x01\x02\n", bytes(range(256)) * 20 + b"\n", b"<?xml version='1.0'?>\n" * 40, b"\n<a>\n\n>>\n<\n"]
 )
 def test_file_given_up_does_not_spoil_the_next(tmp_path, garbage):
     """gmsh keeps what is left of a file it gave up and would find fault with the next one for it."""

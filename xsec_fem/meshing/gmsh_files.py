@@ -10,7 +10,7 @@ import numpy.typing as npt
 
 from xsec_fem.errors import MeshingError
 from xsec_fem.fem.mesh import Mesh
-from xsec_fem.meshing.gmsh_session import gmsh_session, merge_file
+from xsec_fem.meshing.gmsh_session import gmsh_session, merge_script
 from xsec_fem.meshing.occ_faces import Frame, Geometry
 from xsec_fem.meshing.regions import FileMesh, Region, assign_regions, common_file, file_error
 from xsec_fem.model.section import Section
@@ -38,7 +38,7 @@ def merge_geo(gmsh: Any, section: Section) -> Geometry:
     """
     shared = common_file(section)
     _require_last_line(shared.path)
-    merge_file(gmsh, str(shared.path))
+    merge_script(gmsh, str(shared.path))
     for key, value in _AFTER_MERGE.items():
         gmsh.option.setNumber(key, value)
     surfaces = [tag for _, tag in gmsh.model.getEntities(2)]
@@ -65,7 +65,7 @@ def read_msh(path: Path) -> FileMesh:
     of one order from 1 to 5.
     """
     with gmsh_session() as gmsh:
-        merge_file(gmsh, str(path))
+        gmsh.merge(str(path))
         types, _, node_tags = gmsh.model.mesh.getElements(2)
         if not len(types):
             raise MeshingError("no element of dimension 2")

@@ -7,16 +7,21 @@ gmsh running already, a model of our own is added and taken away again, and the 
 from __future__ import annotations
 
 import re
+import tempfile
 import threading
 from collections.abc import Iterator
 from contextlib import contextmanager
+from pathlib import Path
 from typing import Any
 
 from xsec_fem.errors import MeshingError, MissingLibraryError
 
 _LOCK = threading.RLock()
 _LOG_LINES = 6
-_LEFT_OVER = 2000  # characters of an earlier file to get over: its reader stops at the first buffers of a few hundred
+_LEFT_OVER = (
+    20_000  # attempts to get over what is left of an earlier file: more than the reader's buffer of 16 kB holds
+)
+_CLEAN = 3  # scripts read without a fault in a row before the reader counts as empty: single characters can be valid
 _MODEL = "xsec_fem"
 _OPTIONS = {
     "General.Terminal": 0,
@@ -70,20 +75,31 @@ def gmsh_session(name: str = _MODEL) -> Iterator[Any]:
             gmsh.logger.stop()
 
 
-def merge_file(gmsh: Any, path: str) -> None:
-    """Merge a file into the current model; MeshingError's cause is gmsh's own exception when it cannot be read.
+def merge_script(gmsh: Any, path: str) -> None:
+    """Merge a geometry script into the current model; gmsh's own exception when it cannot be read.
 
-    gmsh's reader keeps what it left of a file that it gave up, for the life of the process, and trips over one character of it
-    at each later attempt, before the first line. Such an attempt says nothing of this file and is made again.
+    gmsh's reader keeps what it left of a file that it gave up, for the life of the process, and trips over it character by
+    character in later files. So it is first given empty scripts, in a model thrown away, until it reads them without a fault.
     """
-    for _ in range(_LEFT_OVER):
-        try:
-            gmsh.merge(path)
-        except Exception:
-            if "line 0: " not in gmsh.logger.getLastError():
-                raise
-        else:
-            return
+    model = gmsh.model.getCurrent()
+    gmsh.model.add(_MODEL + " left over")
+    with tempfile.TemporaryDirectory() as folder:
+        empty = Path(folder) / "empty.geo"
+        empty.write_text("// nothing\n")
+        clean = 0
+        for _ in range(_LEFT_OVER):
+            try:
+                gmsh.merge(str(empty))
+            except Exception:
+                clean = 0
+            else:
+                clean += 1
+            if clean == _CLEAN:
+                break
+    gmsh.model.remove()
+    gmsh.model.setCurrent(model)
+    gmsh.logger.stop()  # what the reader said of earlier files is not told of this one
+    gmsh.logger.start()
     gmsh.merge(path)
 
 
