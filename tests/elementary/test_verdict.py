@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from functools import lru_cache
+from pathlib import Path
 
 import numpy as np
 import pytest
@@ -11,6 +12,7 @@ import pytest
 from tests import oracles, structured
 from tests.chain import Solved, layered, solved
 from tests.recovery.test_cuts import VZ, fields_of
+from xsec_fem import read_section, solve
 from xsec_fem.elementary.compare import Limits, compare, ratio_field
 from xsec_fem.elementary.verdict import CARE, GOOD, POOR, grade_of, verdict
 from xsec_fem.elementary.wall_stations import stations
@@ -269,3 +271,15 @@ def test_thin_places_of_unnamed_parts_are_walls_and_solid_parts_have_none() -> N
         structured.moved(structured.rectangle(2, 8, 3, 12, 3), degrees=20),
     ):
         assert wall_tables(fields_of(solved(block)), unnamed(block), VZ) == ()
+
+
+def test_summary_names_a_corner_only_where_nothing_else_tells() -> None:
+    """A stress without limit says nothing of the formula; where a flange is off as well, the flange is named."""
+    girder = (
+        solve(read_section(Path(__file__).parents[2] / "meshes/welded_girder.toml"), certificate=False).cases[0].verdict
+    )
+    assert girder is not None
+    corners = {finding.name for finding in girder.parts if finding.cause == "corner"}
+    assert corners
+    named = girder.message.split(" here. ")[1].split(":")[0]
+    assert named not in corners

@@ -90,7 +90,9 @@ def _farthest(findings: tuple[Finding, ...], side: str) -> Finding | None:
 
 
 def _summary(grade: str, parts: tuple[Finding, ...], limits: Limits) -> str:
-    low, high = _farthest(parts, TOO_LOW), _farthest(parts, TOO_HIGH)
+    # a corner without limit says nothing of the formula where something else does
+    telling = tuple(finding for finding in parts if finding.grade == grade and finding.cause != "corner") or parts
+    low, high = _farthest(telling, TOO_LOW), _farthest(telling, TOO_HIGH)
     worst = low if low and low.grade == grade else high if high and high.grade == grade else low or high
     if worst is None or grade == GOOD:
         return f"V S/(I t) is good here: within {100 * limits.good:.0f} % in every part."

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 
 from xsec_fem.report.blocks import Table
@@ -40,13 +41,20 @@ def _intervals(properties: Properties, certificate: Certificate, size: float) ->
         symbol: (getattr(properties, symbol), getattr(certificate, symbol), 0.0) for symbol in ("IT", "Asy", "Asz")
     }
     proven |= {symbol: (getattr(properties, symbol), getattr(certificate, symbol), size) for symbol in _LENGTHS}
+    proven["F_yz"] = (properties.shear_flexibility[0][1], certificate.coupling, _shear_scale(properties))
     proven["GIT"] = (properties.GIT, (certificate.IT[0] * stiffer, certificate.IT[1] * stiffer), 0.0)
     return {symbol: certified(value, interval, scale) for symbol, (value, interval, scale) in proven.items()}
+
+
+def _shear_scale(properties: Properties) -> float:
+    """What the coupling flexibility is compared with: the mean of the direct ones [1/N]."""
+    return math.sqrt(properties.shear_flexibility[0][0] * properties.shear_flexibility[1][1])
 
 
 def _rows(p: Properties, units: UnitSystem, size: float) -> tuple[tuple[str, str, str, str], ...]:
     length, area, fourth = units.length, units.power(2), units.power(4)
     EI, twist = f"{units.force} {area}", max(p.Iyy, p.Izz)
+    flexibility = p.shear_flexibility[0][1]
     return (
         ("A", number(p.A), area, "area"),
         ("yc", number(p.yc, scale=size), length, "centroid, y"),
@@ -65,6 +73,12 @@ def _rows(p: Properties, units: UnitSystem, size: float) -> tuple[tuple[str, str
         ("zsc_trefftz", number(p.zsc_trefftz, scale=size), length, "shear centre (Trefftz, without nu), z"),
         ("Asy", number(p.Asy), area, "shear area in y: stiffness (Timoshenko), not a code's resistance area"),
         ("Asz", number(p.Asz), area, "shear area in z: stiffness (Timoshenko), not a code's resistance area"),
+        (
+            "F_yz",
+            number(flexibility, scale=_shear_scale(p)),
+            f"1/{units.force}",
+            "shear flexibility, coupling of Vy and Vz",
+        ),
         ("EA", number(p.EA), units.force, "axial stiffness"),
         ("EIyy", number(p.EIyy), EI, "bending stiffness"),
         ("EIzz", number(p.EIzz), EI, "bending stiffness"),
