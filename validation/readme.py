@@ -26,6 +26,8 @@ and our guaranteed intervals; `xsec-fem validate torsion ellipse` only the cases
 - Provenance: *computed* from its formula or by an independent method; *read* in a copy of the source; *common practice*, without
   a source; *from memory*, not looked up again.
 - "Differs by" is rounded up to a power of ten, and like "allowed" a share of the reference, or (marked u) in the quantity's unit.
+- [Where handbooks are wrong, or mean something else](disagreements.md); [second opinions](second_opinions.md) from two
+  general-purpose libraries on six sections; `tests/mutation.py` seeds bugs and shows that the cases catch them.
 - To add a case: append it to its family's `cases()`, give source, provenance, tolerance and the tolerance's reason, then write
   this file again with `xsec-fem validate --write-readme`; the tests compare it with a fresh run.
 

@@ -95,7 +95,9 @@ EXAMPLES: dict[str, tuple[Entry, ...]] = {
         Entry("depth", 200, "whole height"),
         Entry("width", 75, "whole width"),
         Entry("web", 8.5, "thickness of the web, on the left"),
-        Entry("flange", 11.5, "thickness of the flanges"),
+        Entry(
+            "flange", 11.5, "thickness of the flanges, halfway out when tapered (U tables give it at half the width)"
+        ),
         Entry("root_radius", 11.5, "optional: radius between web and flanges"),
         _option("lip", 40, "optional: whole length of lips at the flange tips; not with toe_radius or taper"),
     ),
