@@ -148,7 +148,7 @@ class _Fill:
         wall = float(self.canvas.mesh.walls.min()) * inches * 72
         # the bands' edges are the contour lines; they also close the hairlines that anti-aliasing leaves between bands
         filled.set_edgecolor("face" if scale.flat else "#00000099")
-        filled.set_linewidth(float(np.clip(0.05 * wall, 0.05, 0.35)))
+        filled.set_linewidth(float(np.clip(0.012 * wall, 0.05, 0.35)))
         filled.set_rasterized(len(self.canvas.mesh.triangles) > RASTERISE_ABOVE)
         width = float(np.clip(0.12 * wall, 0.15, 0.8))
         axes.add_collection(LineCollection(self.canvas.mesh.loops, colors=INK, linewidths=width))
