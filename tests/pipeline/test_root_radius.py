@@ -5,6 +5,7 @@ import pytest
 
 from tests.pipeline.sections import HEAD, L_SHARP, TWIST, section
 from xsec_fem import InputError, solve
+from xsec_fem.meshing.mesh_files import read_mesh_file
 from xsec_fem.model.root_radius import with_root_radius
 
 HOLED = HEAD + (
@@ -53,3 +54,12 @@ def test_places_without_a_corner_change_nothing():
 def test_radius_that_does_not_fit():
     with pytest.raises(InputError, match=r'try_radius must fit the corner of part "a" at \(1, 1\): below 7 \(got 8\)'):
         solve(section(L_SHARP + "[solve]\ntry_radius = 8\n"))
+
+
+def test_mesh_kept_is_that_of_the_section_itself(tmp_path):
+    """The trial with a radius must not overwrite the mesh that the user asked to keep."""
+    text = L_SHARP + TWIST + '[solve]\ntry_radius = 0.2\nmesh_file = "kept.msh"\n'
+    result = solve(section(text, tmp_path), certificate=False)
+    kept = read_mesh_file(tmp_path / "kept.msh")
+    assert len(kept.nodes) == len(result.mesh.nodes)
+    assert len(result.rounded.mesh.nodes) != len(kept.nodes)

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import pytest
-from hypothesis import given, settings
+from hypothesis import example, given, settings
 from hypothesis import strategies as st
 from matplotlib.backends.backend_agg import FigureCanvasAgg
 from matplotlib.figure import Figure
@@ -30,6 +30,7 @@ def test_width_is_that_of_the_drawing(text, size, weight):
 
 
 @settings(max_examples=40, deadline=None)
+@example("0000000000%:::", 0.515625)  # wide letters before narrow ones
 @given(st.text(st.characters(codec="ascii", categories=["L", "N", "P", "Zs"]), max_size=120), st.floats(0.5, 5))
 def test_lines_fit_and_nothing_is_lost(text, width):
     lines = wrapped(text, 9.0, width)

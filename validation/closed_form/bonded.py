@@ -106,13 +106,11 @@ def solve_terms(k: FloatArray, G: FloatArray, thickness: FloatArray, q: FloatArr
     return terms
 
 
-@dataclass(frozen=True)
-class LayeredFlexure:
-    """Horizontal layers of moduli E between the lines (from below), width b, V = 1 along z: stresses and flexibility."""
+class _Layers:
+    """What layers of moduli E between the lines have in common, one above the other or side by side."""
 
     lines: FloatArray
     E: FloatArray
-    width: float
     nu: float
 
     @property
@@ -122,9 +120,19 @@ class LayeredFlexure:
 
     @property
     def centroid(self) -> float:
-        """E-weighted z."""
+        """E-weighted, across the layers; side by side the shear centre at nu = 0, and Trefftz' at any nu: tau0 is exact there."""
         low, high = self.lines[:-1], self.lines[1:]
         return float((self.E * (high**2 - low**2) / 2).sum() / (self.E * (high - low)).sum())
+
+
+@dataclass(frozen=True)
+class LayeredFlexure(_Layers):
+    """Horizontal layers of moduli E between the lines (from below), width b, V = 1 along z: stresses and flexibility."""
+
+    lines: FloatArray
+    E: FloatArray
+    width: float
+    nu: float
 
     @property
     def EI(self) -> float:
@@ -167,24 +175,13 @@ class LayeredFlexure:
 
 
 @dataclass(frozen=True)
-class SideBySide:
+class SideBySide(_Layers):
     """Upright layers of moduli E between the lines (from the left), depth 2c about z = 0: torsion, V = 1 along z, shear centres."""
 
     lines: FloatArray
     E: FloatArray
     depth: float
     nu: float
-
-    @property
-    def G(self) -> FloatArray:
-        """(L,) shear moduli."""
-        return np.asarray(self.E / (2 * (1 + self.nu)))
-
-    @property
-    def centroid(self) -> float:
-        """E-weighted y; at nu = 0 also the shear centre, and Trefftz' centre at any nu (tau0 is exact there)."""
-        low, high = self.lines[:-1], self.lines[1:]
-        return float((self.E * (high**2 - low**2) / 2).sum() / (self.E * (high - low)).sum())
 
     @property
     def EI(self) -> float:

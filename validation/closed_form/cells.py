@@ -57,13 +57,6 @@ class ThinWalls:
         area, m = self.t * self.lengths, (a + b) / 2
         return np.asarray(np.einsum("w,wi,wj->ij", area, m, m) + np.einsum("w,wi,wj->ij", area / 12, b - a, b - a))
 
-    def _balance(self) -> FloatArray:
-        """(N, W): +1 where a wall starts, -1 where it ends."""
-        rows = np.zeros((len(self.nodes), len(self.t)))
-        rows[self.walls[:, 0], np.arange(len(self.t))] = 1
-        rows[self.walls[:, 1], np.arange(len(self.t))] -= 1
-        return rows
-
     def _round(self) -> FloatArray:
         """(C, W): the cells as sums of walls."""
         rows = np.zeros((len(self.cells), len(self.t)))

@@ -56,7 +56,10 @@ def solve(section: Section, certificate: bool = True, progress: Progress | None 
     if section.solve.try_radius is None:
         return result
     sharp = [(corner.y, corner.z) for corner in result.corners if len(corner.parts) == 1]
-    rounded = _solve_once(with_root_radius(section, section.solve.try_radius, sharp), certificate, progress)
+    unkept = replace(
+        section, solve=replace(section.solve, mesh_file=None)
+    )  # the mesh kept is that of the section itself
+    rounded = _solve_once(with_root_radius(unkept, section.solve.try_radius, sharp), certificate, progress)
     return replace(result, rounded=rounded)
 
 

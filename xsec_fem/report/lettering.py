@@ -59,6 +59,10 @@ def wrapped(text: str, size: float, width: float, bold: bool = False) -> list[st
             lines.append(line)
         while text_width(word, size, bold) > width and len(word) > 1:
             cut = max(1, int(len(word) * width / text_width(word, size, bold)) - 1)
+            while (
+                cut > 1 and text_width(word[:cut], size, bold) > width
+            ):  # letters wider than the word's mean come first
+                cut -= 1
             lines.append(word[:cut])
             word = word[cut:]
         line = word
@@ -71,12 +75,3 @@ def _kept_together(text: str) -> str:
     text = re.sub(r"(\([^(), ]+,) ([^(), ]+\))", "\\1\u00a0\\2", text)  # points (y, z)
     text = re.sub(r"(?<=[\d)]) (?=(N|kN|lbf|kip|MPa|kPa|psi|ksi|mm|m|in)\b)", "\u00a0", text)
     return re.sub(r"\u00a0(N|kN|lbf|kip) (mm|m|in)\b", "\u00a0\\1\u00a0\\2", text)
-
-
-def shortened(text: str, size: float, width: float) -> str:
-    """Return the text, or its beginning and "…" when it is wider than `width` inches."""
-    if text_width(text, size) <= width:
-        return text
-    while text and text_width(text + "…", size) > width:
-        text = text[:-1]
-    return text.rstrip() + "…"

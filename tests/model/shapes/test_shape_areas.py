@@ -6,7 +6,7 @@ import numpy as np
 import pytest
 from shape_examples import EXAMPLES, IDS
 
-from xsec_fem.model.area_moments import area_moments
+from tests.model.area_moments import area_moments
 from xsec_fem.model.outline import Isometry
 from xsec_fem.model.shapes import SHAPES
 

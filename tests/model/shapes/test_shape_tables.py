@@ -2,7 +2,7 @@
 
 import pytest
 
-from xsec_fem.model.area_moments import area_moments
+from tests.model.area_moments import area_moments
 from xsec_fem.model.shapes import SHAPES
 
 
